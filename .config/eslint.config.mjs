@@ -15,13 +15,26 @@ const layer = (files, group, message) => ({
 
 export default tseslint.config(
   {
-    ignores: ['dist/**', '.tsbuild/**', '.e2e/**', 'build-output/**', 'demo/**', '**/*.mjs', '**/*.cjs', 'src/wasm/**', '.config/**'],
+    ignores: [
+      'dist/**',
+      '.tsbuild/**',
+      '.e2e/**',
+      'build-output/**',
+      'demo/**',
+      '**/*.mjs',
+      '**/*.cjs',
+      'src/wasm/**',
+      '.config/**',
+    ],
   },
   ...tseslint.configs.strictTypeChecked,
   {
     languageOptions: { parserOptions: { projectService: true, tsconfigRootDir: process.cwd() } },
     rules: {
-      '@typescript-eslint/restrict-template-expressions': ['error', { allowNumber: true, allowBoolean: true }],
+      '@typescript-eslint/restrict-template-expressions': [
+        'error',
+        { allowNumber: true, allowBoolean: true },
+      ],
       '@typescript-eslint/no-non-null-assertion': 'off',
       '@typescript-eslint/no-unnecessary-condition': ['error', { allowConstantLoopConditions: true }],
       '@typescript-eslint/no-confusing-void-expression': ['error', { ignoreArrowShorthand: true }],
@@ -32,10 +45,23 @@ export default tseslint.config(
     ['vscode', 'node:*', '**/host/**', '**/extension/**', '**/webview/**'],
     'src/core runs anywhere: no vscode, no Node, no DOM.',
   ),
-  layer(['src/host/**'], ['vscode', '**/extension/**', '**/webview/**'], 'src/host runs headless: no vscode.'),
+  layer(
+    ['src/host/**'],
+    ['vscode', '**/extension/**', '**/webview/**'],
+    'src/host runs headless: no vscode.',
+  ),
   layer(
     ['webview/**'],
-    ['vscode', 'node:*', '**/host/**', '**/extension/**', '**/core/steps/**', '**/core/kernels/**', '**/core/formats/**', '**/core/recipe/**'],
+    [
+      'vscode',
+      'node:*',
+      '**/host/**',
+      '**/extension/**',
+      '**/core/steps/**',
+      '**/core/kernels/**',
+      '**/core/formats/**',
+      '**/core/recipe/**',
+    ],
     'The page gets step descriptions and results as data over the protocol.',
   ),
 );
