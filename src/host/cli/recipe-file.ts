@@ -1,0 +1,70 @@
+import { readFileSync, statSync } from 'node:fs';
+import { dirname, resolve } from 'node:path';
+import { UserError } from '../../core/data/errors';
+import type { Card, Diagnostic, RecipeText, RunEvent, RunResult } from '../../core/protocol/engine';
+import type { Args } from './args';
+import type { World } from './world';
+
+export interface RecipeFile extends RecipeText {
+  readonly path: string;
+}
+
+const MAX_RECIPE = 16 << 20;
+
+/** Reads the recipe named by the first word. */
+export function readRecipe(args: Args, world: World, usage: string): RecipeFile {
+  const [word, extra] = args.words;
+  if (word === undefined || extra !== undefined) throw new UserError('usage', `usage: fringeside ${usage}`);
+  const path = resolve(world.cwd, word);
+  let stat;
+  try {
+    stat = statSync(path);
+  } catch {
+    throw new UserError('no-file', `${word}: there is no such file`, path);
+  }
+  if (stat.isDirectory())
+    throw new UserError('directory', `${word} is a folder; name a recipe file (*.fringe.json)`, path);
+  if (stat.size > MAX_RECIPE)
+    throw new UserError(
+      'too-large',
+      `${word} has ${stat.size} bytes, too many for a recipe; is it a data file? Try: fringeside overview ${word}`,
+      path,
+    );
+  return { path, text: readFileSync(path, 'utf8'), folder: dirname(path) };
+}
+
+export const diagnosticLine = (path: string, d: Diagnostic): string =>
+  `${path}:${d.line}:${d.column}: ${d.severity}: ${d.message}\n`;
+
+/** Runs a recipe with a progress line on stderr; problems of the recipe are printed with their positions. */
+export async function runRecipe(recipe: RecipeFile, world: World): Promise<RunResult> {
+  const engine = await world.engine();
+  const { event, clear } = progressLine(world);
+  const result = await engine.run(recipe, { event, cancelled: () => world.cancelled() });
+  clear();
+  for (const d of result.diagnostics) world.err(diagnosticLine(recipe.path, d));
+  return result;
+}
+
+function progressLine(world: World): { event(e: RunEvent): void; clear(): void } {
+  let width = 0;
+  const show = (text: string): void => {
+    if (!world.progress) return;
+    const line = text.slice(0, world.columns - 1);
+    world.err(`\r${line.padEnd(width)}`);
+    width = line.length;
+  };
+  return {
+    event: (e) => {
+      if (e.type === 'running')
+        show(`${e.id}: ${Math.round(100 * e.fraction)} %${e.note === undefined ? '' : ` ${e.note}`}`);
+    },
+    clear: () => {
+      if (width > 0) world.err(`\r${' '.repeat(width)}\r`);
+      width = 0;
+    },
+  };
+}
+
+export const failedCards = (result: RunResult): readonly Card[] =>
+  result.cards.filter((c) => c.state === 'failed' || c.state === 'blocked');
