@@ -9,7 +9,7 @@ import { STEP_KEYS, type Recipe, type StepSpec } from './recipe';
 
 /**
  * Checks what the shape alone cannot tell: step names, parameters, what each step consumes, cycles, expectations.
- * Adds to `parsed.diagnostics`; every message of a step carries its id as `subject`.
+ * Adds to `parsed.tree.diagnostics`; every message of a step carries its id as `subject`.
  */
 export function diagnose(parsed: ParsedRecipe, steps: Readonly<Record<string, AnyStep>>): void {
   const recipe = parsed.recipe;
@@ -21,10 +21,15 @@ export function diagnose(parsed: ParsedRecipe, steps: Readonly<Record<string, An
       const suggestions = nearestNames(spec.do, Object.keys(steps));
       const all =
         suggestions.length > 0 ? hint(suggestions) : ` Known steps: ${Object.keys(steps).join(', ')}.`;
-      parsed.report(parsed.at(['steps', i, 'do']), 'unknown-step', `there is no step "${spec.do}".${all}`, {
-        suggestions,
-        subject,
-      });
+      parsed.tree.report(
+        parsed.tree.at(['steps', i, 'do']),
+        'unknown-step',
+        `there is no step "${spec.do}".${all}`,
+        {
+          suggestions,
+          subject,
+        },
+      );
       return;
     }
     checkParams(parsed, spec, i, step);
@@ -32,9 +37,14 @@ export function diagnose(parsed: ParsedRecipe, steps: Readonly<Record<string, An
   });
   for (const id of dependencyOrder(recipe).cyclic) {
     const i = recipe.steps.findIndex((s) => s.id === id);
-    parsed.report(parsed.at(['steps', i, 'of']), 'cycle', `step "${id}" depends on itself through "of"`, {
-      subject: id,
-    });
+    parsed.tree.report(
+      parsed.tree.at(['steps', i, 'of']),
+      'cycle',
+      `step "${id}" depends on itself through "of"`,
+      {
+        subject: id,
+      },
+    );
   }
   for (const key of Object.keys(recipe.expect ?? {})) {
     const id = key.split('.')[0]!;
@@ -43,8 +53,8 @@ export function diagnose(parsed: ParsedRecipe, steps: Readonly<Record<string, An
       id,
       recipe.steps.map((s) => s.id),
     );
-    parsed.report(
-      parsed.at(['expect', key]),
+    parsed.tree.report(
+      parsed.tree.at(['expect', key]),
       'unknown-name',
       `expectation "${key}" names no step of this recipe.${hint(suggestions)}`,
       { suggestions },
@@ -56,7 +66,7 @@ function checkParams(parsed: ParsedRecipe, spec: StepSpec, i: number, step: AnyS
   const known = Object.keys(step.params);
   for (const [key, raw] of Object.entries(spec.params)) {
     const param = Object.hasOwn(step.params, key) ? step.params[key] : undefined;
-    const where = parsed.at(['steps', i, key]);
+    const where = parsed.tree.at(['steps', i, key]);
     if (!param) {
       const suggestions = nearestNames(key, [...known, ...STEP_KEYS]);
       const all =
@@ -65,7 +75,7 @@ function checkParams(parsed: ParsedRecipe, spec: StepSpec, i: number, step: AnyS
           : known.length > 0
             ? ` It knows: ${known.join(', ')}.`
             : '';
-      parsed.report(where, 'unknown-parameter', `${step.id} has no parameter "${key}".${all}`, {
+      parsed.tree.report(where, 'unknown-parameter', `${step.id} has no parameter "${key}".${all}`, {
         suggestions,
         subject: spec.id,
       });
@@ -75,7 +85,7 @@ function checkParams(parsed: ParsedRecipe, spec: StepSpec, i: number, step: AnyS
     if (!check.ok) {
       const suggestions =
         param.kind === 'choice' && typeof raw === 'string' ? nearestNames(raw, param.choices) : [];
-      parsed.report(where, 'wrong-value', `"${key}" ${check.message}.${hint(suggestions)}`, {
+      parsed.tree.report(where, 'wrong-value', `"${key}" ${check.message}.${hint(suggestions)}`, {
         suggestions,
         subject: spec.id,
       });
@@ -99,8 +109,8 @@ function checkOf(
         (n) => n !== spec.id,
       );
       const suggestions = nearestNames(name, names);
-      parsed.report(
-        parsed.at(['steps', i, 'of', k]),
+      parsed.tree.report(
+        parsed.tree.at(['steps', i, 'of', k]),
         'unknown-name',
         `"${name}" is neither an input nor a step.${hint(suggestions)}`,
         { suggestions, subject: spec.id },
@@ -112,7 +122,9 @@ function checkOf(
   }
   const problem = portProblem(step.id, step.takes, given);
   if (problem !== undefined)
-    parsed.report(parsed.at(['steps', i, 'of']), 'wrong-input', `${problem}.`, { subject: spec.id });
+    parsed.tree.report(parsed.tree.at(['steps', i, 'of']), 'wrong-input', `${problem}.`, {
+      subject: spec.id,
+    });
 }
 
 /** Kind a name stands for; "unknown" for a step whose operation is itself unknown, which is reported there. */

@@ -1,296 +1,41 @@
-import {
-  findNodeAtLocation,
-  getNodeValue,
-  parseTree,
-  printParseErrorCode,
-  type Node,
-  type ParseError,
-} from 'jsonc-parser';
-import { hint, nearestNames } from '../data/nearest';
+import { getNodeValue, type Node } from 'jsonc-parser';
 import type { Diagnostic } from '../protocol/engine';
-import type { Expectation, InputSpec, Recipe, StepSpec } from './recipe';
-import { STEP_KEYS } from './recipe';
+import { JsonTree } from './json-tree';
+import { STEP_KEYS, type Expectation, type InputSpec, type Recipe, type StepSpec } from './recipe';
 
-/** A recipe with the places its parts stand at. `recipe` is absent when the text is too broken to mean anything. */
+/** A recipe and the tree that knows where its parts stand. `recipe` is absent when the text is not whole JSON. */
 export interface ParsedRecipe {
   readonly recipe?: Recipe;
-  readonly diagnostics: Diagnostic[];
-  /** Node of a JSON path such as ["steps", 0, "do"], for diagnostics found later. */
-  at(path: readonly (string | number)[]): { from: number; to: number };
-  report(at: { from: number; to: number }, code: string, message: string, extra?: Partial<Diagnostic>): void;
+  readonly tree: JsonTree;
+  readonly diagnostics: readonly Diagnostic[];
 }
 
 const TOP_KEYS = ['$schema', 'fringe', 'title', 'sites', 'inputs', 'steps', 'expect'];
 const INPUT_KEYS = ['file', 'channel', 'start', 'duration', 'rate', 'epoch', 'unit', 'scale'];
 const NAME = /^[A-Za-z][A-Za-z0-9_-]*$/;
-const MAX_DEPTH = 64;
-
-function lineIndex(text: string): (offset: number) => { line: number; column: number } {
-  const starts = [0];
-  for (let i = text.indexOf('\n'); i >= 0; i = text.indexOf('\n', i + 1)) starts.push(i + 1);
-  return (offset) => {
-    let lo = 0;
-    let hi = starts.length - 1;
-    while (lo < hi) {
-      const mid = (lo + hi + 1) >> 1;
-      if (starts[mid]! <= offset) lo = mid;
-      else hi = mid - 1;
-    }
-    return { line: lo + 1, column: offset - starts[lo]! + 1 };
-  };
-}
-
-/** Nesting deeper than any recipe needs would overflow the parser's stack. */
-function tooDeep(text: string): number | undefined {
-  let depth = 0;
-  let inString = false;
-  for (let i = 0; i < text.length; i++) {
-    const c = text.charCodeAt(i);
-    if (inString) {
-      if (c === 92) i++;
-      else if (c === 34 || c === 10) inString = false;
-    } else if (c === 34) inString = true;
-    else if (c === 123 || c === 91) {
-      if (++depth > MAX_DEPTH) return i;
-    } else if (c === 125 || c === 93) depth--;
-  }
-  return undefined;
-}
+const NAME_RULE = 'use letters, digits, - and _, beginning with a letter';
+const GPS_TEXT = /^\s*-?\d{1,12}(\.\d*)?\s*$/;
 
 /**
- * Reads a recipe (JSON with comments and trailing commas). Shape and names are checked here; what the steps and files
- * say is checked by diagnose.ts. Never throws: problems come back with positions.
+ * Reads a recipe. Shape and names are checked here; what the steps and files say is checked by diagnose.ts.
+ * Never throws: problems are in `diagnostics` with positions.
  */
 export function parseRecipe(text: string): ParsedRecipe {
-  const place = lineIndex(text);
-  const diagnostics: Diagnostic[] = [];
-  const report: ParsedRecipe['report'] = ({ from, to }, code, message, extra = {}) => {
-    diagnostics.push({
-      severity: 'error',
-      code,
-      message,
-      from,
-      to,
-      ...place(from),
-      suggestions: [],
-      ...extra,
-    });
-  };
-  const deep = tooDeep(text);
-  const errors: ParseError[] = [];
-  const root =
-    deep === undefined
-      ? parseTree(text, errors, { allowTrailingComma: true, disallowComments: false })
-      : undefined;
-  const span = (n: Node | undefined): { from: number; to: number } =>
-    n ? { from: n.offset, to: n.offset + n.length } : { from: 0, to: Math.min(1, text.length) };
-  const at: ParsedRecipe['at'] = (path) => {
-    for (let cut = path.length; cut >= 0; cut--) {
-      const node = root && findNodeAtLocation(root, path.slice(0, cut));
-      if (node) return span(node);
-    }
-    return span(root);
-  };
-  if (deep !== undefined)
-    report({ from: deep, to: deep + 1 }, 'json', `the document is nested more than ${MAX_DEPTH} levels deep`);
-  for (const e of errors) {
-    const what = printParseErrorCode(e.error)
-      .replace(/([a-z])([A-Z])/g, '$1 $2')
-      .toLowerCase();
-    report({ from: e.offset, to: e.offset + Math.max(1, e.length) }, 'json', `not valid JSON: ${what}`);
+  const tree = new JsonTree(text);
+  const { root } = tree;
+  if (root?.type !== 'object') {
+    if (tree.diagnostics.length === 0)
+      tree.report(tree.range(root), 'json', 'a recipe is a JSON object with "fringe", "inputs" and "steps"');
+    return { tree, diagnostics: tree.diagnostics };
   }
-  if (!root || root.type !== 'object') {
-    if (diagnostics.length === 0)
-      report(span(root), 'json', 'a recipe is a JSON object with "fringe", "inputs" and "steps"');
-    return { diagnostics, at, report };
-  }
-
-  const members = (node: Node | undefined): [string, Node, Node][] =>
-    node?.type === 'object'
-      ? (node.children ?? []).flatMap((p) => {
-          const [key, value] = p.children ?? [];
-          return key && value ? [[key.value as string, value, key] as [string, Node, Node]] : [];
-        })
-      : [];
-  const unknownKeys = (node: Node, known: readonly string[], subject?: string): void => {
-    for (const [key, , keyNode] of members(node)) {
-      if (known.includes(key)) continue;
-      const suggestions = nearestNames(key, known);
-      report(span(keyNode), 'unknown-key', `unknown key "${key}".${hint(suggestions)}`, {
-        suggestions,
-        ...(subject === undefined ? {} : { subject }),
-      });
-    }
-    const seen = new Set<string>();
-    for (const [key, , keyNode] of members(node)) {
-      if (seen.has(key)) report(span(keyNode), 'duplicate-key', `"${key}" is given twice`);
-      seen.add(key);
-    }
-  };
-  const get = (node: Node, key: string): Node | undefined => members(node).find(([k]) => k === key)?.[1];
-  const need = (
-    node: Node,
-    key: string,
-    type: 'string' | 'number' | 'array' | 'object',
-    what: string,
-  ): Node | undefined => {
-    const child = get(node, key);
-    if (!child)
-      report({ from: node.offset, to: node.offset + 1 }, 'missing-key', `"${key}" is missing: ${what}`);
-    else if (child.type !== type) {
-      report(
-        span(child),
-        'wrong-type',
-        `"${key}" must be ${type === 'object' ? 'an object' : type === 'array' ? 'a list' : `a ${type}`}: ${what}`,
-      );
-      return undefined;
-    }
-    return child;
-  };
-
-  unknownKeys(root, TOP_KEYS);
-  const version = get(root, 'fringe');
-  if (!version)
-    report(
-      { from: root.offset, to: root.offset + 1 },
-      'missing-key',
-      '"fringe": 1 is missing: the format version',
-    );
-  else if (version.value !== 1)
-    report(
-      span(version),
-      'version',
-      `format version ${String(version.value)} is not known to this program, which reads 1; use a newer Fringeside or set "fringe": 1`,
-    );
-
-  const inputs: Record<string, InputSpec> = {};
-  for (const [name, node, key] of members(
-    need(root, 'inputs', 'object', 'names for the channels the recipe reads'),
-  )) {
-    if (!NAME.test(name))
-      report(
-        span(key),
-        'bad-name',
-        `"${name}" cannot be an input's name: use letters, digits, - and _, beginning with a letter`,
-      );
-    if (node.type !== 'object') {
-      report(span(node), 'wrong-type', `input "${name}" must be an object with "file"`);
-      continue;
-    }
-    unknownKeys(node, INPUT_KEYS, name);
-    need(node, 'file', 'string', 'path of the data file, relative to the recipe');
-    const spec = getNodeValue(node) as InputSpec;
-    const positive = (k: 'duration' | 'rate'): void => {
-      const v = spec[k];
-      if (v !== undefined && !(typeof v === 'number' && v > 0))
-        report(span(get(node, k)), 'wrong-value', `"${k}" must be a number above 0`, { subject: name });
-    };
-    positive('duration');
-    positive('rate');
-    if (
-      spec.scale !== undefined &&
-      !(typeof spec.scale === 'number' && Number.isFinite(spec.scale) && spec.scale !== 0)
-    )
-      report(span(get(node, 'scale')), 'wrong-value', '"scale" must be a number other than 0', {
-        subject: name,
-      });
-    for (const k of ['channel', 'unit'] as const)
-      if (spec[k] !== undefined && typeof spec[k] !== 'string')
-        report(span(get(node, k)), 'wrong-type', `"${k}" must be text`, { subject: name });
-    for (const k of ['start', 'epoch'] as const) {
-      const v = spec[k];
-      if (
-        v !== undefined &&
-        !(typeof v === 'number'
-          ? Number.isFinite(v)
-          : typeof v === 'string' && /^\s*-?\d{1,12}(\.\d*)?\s*$/.test(v))
-      )
-        report(span(get(node, k)), 'wrong-value', `"${k}" must be a GPS time such as "1400000000.25"`, {
-          subject: name,
-        });
-    }
-    if (typeof spec.file === 'string') inputs[name] = spec;
-  }
-
-  const steps: StepSpec[] = [];
-  const stepList = need(root, 'steps', 'array', 'what to do, in order');
-  (stepList?.children ?? []).forEach((node, i) => {
-    if (node.type !== 'object') {
-      report(span(node), 'wrong-type', 'a step is an object with "id", "do" and "of"');
-      return;
-    }
-    const idNode = need(node, 'id', 'string', 'a name of your choice for the step');
-    const doNode = need(node, 'do', 'string', 'which operation it is');
-    const id = idNode ? (idNode.value as string) : `step-${i + 1}`;
-    if (idNode && !NAME.test(id))
-      report(
-        span(idNode),
-        'bad-name',
-        `"${id}" cannot be a step's id: use letters, digits, - and _, beginning with a letter`,
-        { subject: id },
-      );
-    if (steps.some((s) => s.id === id) || Object.hasOwn(inputs, id))
-      report(
-        span(idNode ?? node),
-        'duplicate-id',
-        `the name "${id}" is used twice; ids of steps and names of inputs must differ`,
-        { subject: id },
-      );
-    const seen = new Set<string>();
-    for (const [key, , keyNode] of members(node)) {
-      if (seen.has(key)) report(span(keyNode), 'duplicate-key', `"${key}" is given twice`, { subject: id });
-      seen.add(key);
-    }
-    const ofNode = get(node, 'of');
-    const of = ofNode ? (getNodeValue(ofNode) as unknown) : [];
-    const names = typeof of === 'string' ? [of] : of;
-    const isNames = Array.isArray(names) && names.every((n): n is string => typeof n === 'string');
-    if (!isNames)
-      report(span(ofNode), 'wrong-type', '"of" must be a list of names of inputs and earlier steps', {
-        subject: id,
-      });
-    const off = get(node, 'off');
-    if (off && off.type !== 'boolean')
-      report(span(off), 'wrong-type', '"off" must be true or false', { subject: id });
-    const params: Record<string, unknown> = {};
-    for (const [key, value] of members(node))
-      if (!(STEP_KEYS as readonly string[]).includes(key)) params[key] = getNodeValue(value);
-    if (doNode)
-      steps.push({
-        id,
-        do: doNode.value as string,
-        of: isNames ? names : [],
-        off: off?.value === true,
-        params,
-      });
-  });
-
-  const expect: Record<string, Expectation> = {};
-  for (const [key, node] of members(get(root, 'expect'))) {
-    if (node.type === 'object') unknownKeys(node, ['value', 'rel', 'abs']);
-    const e = getNodeValue(node) as Partial<Expectation> | null;
-    const isNumber = (v: unknown): boolean => v === undefined || (typeof v === 'number' && v >= 0);
-    if (
-      e === null ||
-      typeof e !== 'object' ||
-      typeof e.value !== 'number' ||
-      !isNumber(e.rel) ||
-      !isNumber(e.abs)
-    )
-      report(
-        span(node),
-        'wrong-type',
-        `expectation "${key}" must be { "value": number, "rel": number or "abs": number }`,
-      );
-    else expect[key] = e as Expectation;
-  }
-  const text_ = (key: 'title' | 'sites'): string | undefined => {
-    const node = get(root, key);
-    if (node && node.type !== 'string') report(span(node), 'wrong-type', `"${key}" must be text`);
-    return node?.type === 'string' ? (node.value as string) : undefined;
-  };
-  const title = text_('title');
-  const sites = text_('sites');
+  tree.checkKeys(root, TOP_KEYS);
+  checkVersion(tree, root);
+  const inputs = parseInputs(tree, root);
+  const steps = parseSteps(tree, root, Object.keys(inputs));
+  const expect = parseExpect(tree, root);
+  const title = textMember(tree, root, 'title');
+  const sites = textMember(tree, root, 'sites');
+  if (tree.broken) return { tree, diagnostics: tree.diagnostics };
   const recipe: Recipe = {
     fringe: 1,
     inputs,
@@ -299,6 +44,142 @@ export function parseRecipe(text: string): ParsedRecipe {
     ...(sites === undefined ? {} : { sites }),
     ...(Object.keys(expect).length === 0 ? {} : { expect }),
   };
-  // Text that jsonc-parser had to guess about must not run: the guess may drop half of a step.
-  return errors.length > 0 ? { diagnostics, at, report } : { recipe, diagnostics, at, report };
+  return { recipe, tree, diagnostics: tree.diagnostics };
+}
+
+function checkVersion(tree: JsonTree, root: Node): void {
+  const version = tree.get(root, 'fringe');
+  const about = 'the format version, which this program reads as 1';
+  if (!version)
+    tree.report(
+      { from: root.offset, to: root.offset + 1 },
+      'missing-key',
+      `"fringe": 1 is missing: ${about}`,
+    );
+  else if (version.value !== 1)
+    tree.report(
+      tree.range(version),
+      'version',
+      `"fringe" is ${String(version.value)}: ${about}. Use a newer Fringeside, or write 1 if the recipe is of this format`,
+    );
+}
+
+function textMember(tree: JsonTree, root: Node, key: 'title' | 'sites'): string | undefined {
+  const node = tree.get(root, key);
+  if (node && node.type !== 'string') tree.report(tree.range(node), 'wrong-type', `"${key}" must be text`);
+  return node?.type === 'string' ? (node.value as string) : undefined;
+}
+
+function parseInputs(tree: JsonTree, root: Node): Record<string, InputSpec> {
+  const inputs: Record<string, InputSpec> = {};
+  const list = tree.need(root, 'inputs', 'object', 'names for the channels the recipe reads');
+  for (const { key: name, value: node, keyNode } of tree.members(list)) {
+    if (!NAME.test(name))
+      tree.report(tree.range(keyNode), 'bad-name', `"${name}" cannot be an input's name: ${NAME_RULE}`);
+    if (node.type !== 'object') {
+      tree.report(tree.range(node), 'wrong-type', `input "${name}" must be an object with "file"`);
+      continue;
+    }
+    tree.checkKeys(node, INPUT_KEYS, name);
+    const file = tree.need(node, 'file', 'string', 'path of the data file, relative to the recipe');
+    checkInputValues(tree, node, name);
+    if (file) inputs[name] = getNodeValue(node) as InputSpec;
+  }
+  return inputs;
+}
+
+function checkInputValues(tree: JsonTree, node: Node, name: string): void {
+  const rules: readonly (readonly [key: string, ok: (v: unknown) => boolean, rule: string])[] = [
+    ['duration', isPositive, 'a number of seconds above 0'],
+    ['rate', isPositive, 'a number of Hz above 0'],
+    ['scale', (v) => isFinite_(v) && v !== 0, 'a number other than 0'],
+    ['channel', (v) => typeof v === 'string', 'text'],
+    ['unit', (v) => typeof v === 'string', 'text'],
+    ['start', isGps, 'a GPS time such as "1400000000.25"'],
+    ['epoch', isGps, 'a GPS time such as "1400000000.25"'],
+  ];
+  for (const [key, ok, rule] of rules) {
+    const member = tree.get(node, key);
+    if (member && !ok(getNodeValue(member)))
+      tree.report(tree.range(member), 'wrong-value', `"${key}" must be ${rule}`, { subject: name });
+  }
+}
+
+const isFinite_ = (v: unknown): boolean => typeof v === 'number' && Number.isFinite(v);
+const isPositive = (v: unknown): boolean => isFinite_(v) && (v as number) > 0;
+const isGps = (v: unknown): boolean => isFinite_(v) || (typeof v === 'string' && GPS_TEXT.test(v));
+
+function parseSteps(tree: JsonTree, root: Node, taken: readonly string[]): StepSpec[] {
+  const names = new Set(taken);
+  const list = tree.need(root, 'steps', 'array', 'what to do, in order');
+  return (list?.children ?? []).flatMap((node, i) => {
+    if (node.type !== 'object') {
+      tree.report(tree.range(node), 'wrong-type', 'a step is an object with "id", "do" and "of"');
+      return [];
+    }
+    const idNode = tree.need(node, 'id', 'string', 'a name of your choice for the step');
+    const doNode = tree.need(node, 'do', 'string', 'which operation it is');
+    const subject = idNode ? (idNode.value as string) : `step-${i + 1}`;
+    if (!NAME.test(subject))
+      tree.report(tree.range(idNode), 'bad-name', `"${subject}" cannot be a step's id: ${NAME_RULE}`, {
+        subject,
+      });
+    if (names.has(subject))
+      tree.report(
+        tree.range(idNode ?? node),
+        'duplicate-id',
+        `the name "${subject}" is used twice; ids of steps and names of inputs must differ`,
+        { subject },
+      );
+    names.add(subject);
+    tree.checkKeys(node, undefined, subject);
+    const off = tree.get(node, 'off');
+    if (off && off.type !== 'boolean')
+      tree.report(tree.range(off), 'wrong-type', '"off" must be true or false', { subject });
+    const params: Record<string, unknown> = {};
+    for (const { key, value } of tree.members(node)) {
+      if (!(STEP_KEYS as readonly string[]).includes(key)) params[key] = getNodeValue(value);
+    }
+    if (!doNode) return [];
+    return [
+      {
+        id: subject,
+        do: doNode.value as string,
+        of: parseOf(tree, node, subject),
+        off: off?.value === true,
+        params,
+      },
+    ];
+  });
+}
+
+/** A single name may stand without brackets. */
+function parseOf(tree: JsonTree, step: Node, subject: string): readonly string[] {
+  const node = tree.get(step, 'of');
+  if (!node) return [];
+  const value = getNodeValue(node) as unknown;
+  const names: unknown = typeof value === 'string' ? [value] : value;
+  if (Array.isArray(names) && names.every((n): n is string => typeof n === 'string')) return names;
+  tree.report(tree.range(node), 'wrong-type', '"of" must be a list of names of inputs and earlier steps', {
+    subject,
+  });
+  return [];
+}
+
+function parseExpect(tree: JsonTree, root: Node): Record<string, Expectation> {
+  const expect: Record<string, Expectation> = {};
+  const tolerance = (v: unknown): boolean => v === undefined || (isFinite_(v) && (v as number) >= 0);
+  for (const { key, value: node } of tree.members(tree.get(root, 'expect'))) {
+    if (node.type === 'object') tree.checkKeys(node, ['value', 'rel', 'abs']);
+    const e = getNodeValue(node) as Partial<Expectation> | null;
+    if (e !== null && typeof e === 'object' && isFinite_(e.value) && tolerance(e.rel) && tolerance(e.abs))
+      expect[key] = e as Expectation;
+    else
+      tree.report(
+        tree.range(node),
+        'wrong-type',
+        `expectation "${key}" must be { "value": number, "rel": number or "abs": number }`,
+      );
+  }
+  return expect;
 }
