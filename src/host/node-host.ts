@@ -5,6 +5,7 @@ import { performance } from 'node:perf_hooks';
 import { fileURLToPath } from 'node:url';
 import { UserError } from '../core/data/errors';
 import { createKernels } from '../core/kernels/kernels';
+import { compileKernels } from '../core/kernels/wasm-module';
 import type { EngineHost } from '../core/recipe/engine-host';
 import { initReaders, openDataFile } from './open-file';
 import { VERSION } from './version';
@@ -19,7 +20,7 @@ export const distFolder = (): string => dirname(fileURLToPath(import.meta.url));
 export async function nodeHost(dist = distFolder()): Promise<EngineHost> {
   await initReaders();
   const wasm = join(dist, 'kernels.wasm');
-  const module = existsSync(wasm) ? new WebAssembly.Module(readFileSync(wasm)) : undefined;
+  const module = existsSync(wasm) ? compileKernels(readFileSync(wasm)) : undefined;
   return {
     version: VERSION,
     kernels: createKernels(module),

@@ -1,4 +1,5 @@
 import type { GpsTime } from './gps-time';
+import type { SampleScan } from './scan';
 import type { Span } from './spans';
 import type { Table } from './table';
 
@@ -19,6 +20,12 @@ export interface Series {
   readonly length: number;
   /** Runs of samples that are finite and meant to be used; everything else must not enter a result. */
   readonly valid: readonly Span[];
+  /** Samples that exist but that a filter's edge has spoilt: hatched in pictures, never in `valid`. */
+  readonly spoilt?: readonly Span[];
+  /** Things every later card must repeat: "contains an injection". */
+  readonly notes?: readonly string[];
+  /** What the one pass over an input found; absent on series that a step made. */
+  readonly scan?: SampleScan;
   /** Copies samples `[from, to)` into `into` (or a new array) and returns it; invalid samples read as NaN. */
   read(from: number, to: number, into?: Float64Array): Float64Array;
 }
@@ -69,6 +76,101 @@ export interface Overview {
   readonly histogram: { readonly edges: Float64Array; readonly counts: Float64Array };
 }
 
+/** A narrow feature standing above the noise floor. */
+export interface NoiseLine {
+  /** Hz, with its standard error. */
+  readonly frequency: number;
+  readonly frequencyError: number;
+  /** Full width at half height in Hz, corrected for the window where it is resolved. */
+  readonly width: number;
+  /** True when the width is not wider than the window's own, so that only an upper limit is known. */
+  readonly unresolved: boolean;
+  /** Peak density over the local floor. */
+  readonly height: number;
+  /** Power in the line: `strain²` for strain data. */
+  readonly power: number;
+  /** frequency / width; a lower limit when unresolved. */
+  readonly q: number;
+  readonly family?: { readonly fundamental: number; readonly harmonic: number };
+  readonly stability: 'stable' | 'drifting' | 'not tested';
+}
+
+export interface LineList {
+  readonly kind: 'lines';
+  readonly label: string;
+  readonly lines: readonly NoiseLine[];
+  /** The spectrum they were found in and the floor they stand above. */
+  readonly spectrum: Spectrum;
+  readonly floor: Float64Array;
+}
+
+/**
+ * Energy over time and frequency. Rows may have cells of their own length (a constant-Q map) or share one (a
+ * spectrogram). Cells are half-open and drawn on their edges.
+ */
+export interface TimeFrequencyMap {
+  readonly kind: 'map';
+  readonly label: string;
+  readonly start: GpsTime;
+  readonly duration: number;
+  /** What a value is: "energy, mean 1 in Gaussian noise" or a density with its unit. */
+  readonly quantity: string;
+  readonly unit: string;
+  readonly planes: readonly MapPlane[];
+  readonly spoilt: readonly Span[];
+}
+
+export interface MapPlane {
+  /** Quality factor of a constant-Q plane; absent for a spectrogram. */
+  readonly q?: number;
+  readonly rows: readonly MapRow[];
+}
+
+export interface MapRow {
+  /** Centre and edges in Hz. */
+  readonly frequency: number;
+  readonly low: number;
+  readonly high: number;
+  /** Seconds after `start` of the left edge of cell 0, and length of a cell. */
+  readonly offset: number;
+  readonly cell: number;
+  /** NaN where there is no valid data. */
+  readonly values: Float32Array;
+}
+
+/** Values against time at a slow rate: drift of band power, of reach. */
+export interface Trend {
+  readonly kind: 'trend';
+  readonly label: string;
+  readonly start: GpsTime;
+  /** Seconds after start of the centre of each value. */
+  readonly time: Float64Array;
+  readonly curves: readonly TrendCurve[];
+}
+
+export interface TrendCurve {
+  readonly id: string;
+  readonly label: string;
+  readonly unit: string;
+  readonly values: Float64Array;
+  /** Standard deviation expected from the estimate alone, if noise were stationary. */
+  readonly expected: number;
+}
+
+/** A dimensionless statistic against frequency with what is expected of it: coherence, ratio of spectra, Gaussianity. */
+export interface FrequencyStatistic {
+  readonly kind: 'statistic';
+  readonly label: string;
+  readonly quantity: string;
+  readonly frequency: Float64Array;
+  readonly values: Float64Array;
+  readonly expected: number;
+  /** Central band expected by chance, and with what probability. */
+  readonly low: number;
+  readonly high: number;
+  readonly probability: number;
+}
+
 export interface Envelope {
   readonly cell: number;
   readonly low: Float64Array;
@@ -92,6 +194,10 @@ export interface DataKinds {
   spectrum: Spectrum;
   overview: Overview;
   table: Table;
+  lines: LineList;
+  map: TimeFrequencyMap;
+  trend: Trend;
+  statistic: FrequencyStatistic;
 }
 
 export type DataKind = keyof DataKinds;

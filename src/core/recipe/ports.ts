@@ -11,6 +11,10 @@ const KIND_WORDS: Record<DataKind, string> = {
   spectrum: 'a noise spectrum',
   overview: 'an overview',
   table: 'a table',
+  lines: 'a list of lines',
+  map: 'a time-frequency map',
+  trend: 'a trend',
+  statistic: 'a statistic against frequency',
 };
 
 export const kindWords = (kind: DataKind): string => KIND_WORDS[kind];
