@@ -100,6 +100,8 @@ export interface Format {
 export interface FileAccess {
   readonly path: string;
   readonly name: string;
+  /** Bytes. */
+  readonly size: number;
   /** Opens the bytes; each call gives a source of its own. */
   bytes(): ByteSource;
   /** Bytes of a file beside this one (a sidecar), or undefined when there is none. */
@@ -137,8 +139,10 @@ export interface Hdf5Dataset {
   readonly chunks: readonly number[] | undefined;
   readonly filters: readonly string[];
   readonly attributes: readonly Hdf5Attribute[];
-  /** Reads samples `[from, to)` along the last axis (others fixed at `row`), converted to float64. */
-  read(row: readonly number[], from: number, to: number, into: Float64Array): void;
-  /** Value of a scalar or small dataset. */
-  small(): string | number | bigint | readonly (string | number | bigint)[];
+  /** Things the host knows and the user should: parts that live in other files, for example. */
+  readonly notes: readonly string[];
+  /** Reads samples `[from, to)` along `axis`, converted to float64; the other axes stay at `at` (one entry per axis). */
+  read(at: readonly number[], axis: number, from: number, to: number, into: Float64Array): void;
+  /** Value of a scalar or small dataset (up to 64 elements); undefined when it is larger or of a type without text. */
+  small(): string | number | bigint | boolean | readonly (string | number | bigint)[] | undefined;
 }
