@@ -193,14 +193,11 @@ describe('polling', () => {
     await scan(noise(200_000), { block: (f) => void seen.push(f) });
     expect(seen).toEqual([...seen].sort((a, b) => a - b));
     expect(seen.at(-1)).toBe(1);
-    const stop = scan(
-      (noise(200_000),
-      {
-        block: () => {
-          throw new Error('enough');
-        },
-      }),
-    );
+    const stop = scan(noise(200_000), {
+      block: () => {
+        throw new Error('enough');
+      },
+    });
     await expect(stop).rejects.toThrow('enough');
   });
 });
