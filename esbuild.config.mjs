@@ -21,7 +21,7 @@ const page = {
 };
 mkdirSync('dist', { recursive: true });
 const pages = existsSync('webview')
-  ? readdirSync('webview').filter((f) => /^(look|data)\.tsx$|^plotly\.ts$/.test(f))
+  ? readdirSync('webview').filter((f) => /^(look|data)\.tsx$|^(plotly|report)\.(ts|css)$/.test(f))
   : [];
 await Promise.all([
   buildWasm(),
@@ -50,7 +50,7 @@ await Promise.all([
   pages.length > 0 &&
     build({
       ...page,
-      entryPoints: Object.fromEntries(pages.map((f) => [f.replace(/\.tsx?$/, ''), `webview/${f}`])),
+      entryPoints: pages.map((f) => `webview/${f}`),
     }),
 ]);
 // The stand-alone report needs the whole figure library, unbundled, to put it inside the page.

@@ -1,6 +1,6 @@
 import { join, resolve } from 'node:path';
 import { writeAtomically } from '../write-atomically';
-import { reportHtml } from '../report';
+import { reportHtml } from '../report/report';
 import { resultJson } from '../result-json';
 import type { Command } from './cli';
 import { failedCards, readRecipe, runRecipe } from './recipe-file';
