@@ -8,6 +8,8 @@ const base = {
   outdir: 'dist',
   logLevel: 'warning',
   legalComments: 'linked',
+  // jsonc-parser's CommonJS entry hides its requires from bundlers; its module entry does not.
+  mainFields: ['module', 'main'],
   minifySyntax: true,
 };
 const page = {

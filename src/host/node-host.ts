@@ -24,7 +24,7 @@ export async function nodeHost(dist = distFolder()): Promise<EngineHost> {
   return {
     version: VERSION,
     kernels: createKernels(module),
-    memoryLimit: 96 * MiB,
+    memoryLimit: 176 * MiB,
     cacheLimit: 256 * MiB,
     open: openDataFile,
     stamp: (path) => {

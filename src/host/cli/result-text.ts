@@ -46,5 +46,5 @@ function cardText(c: Card, w: number): string {
 }
 
 function warningText(x: Warning, w: number): string {
-  return wrap(`  ${x.severity} [${x.code}] ${x.found} ${x.consequence} ${x.remedy}`, w, '    ');
+  return wrap(`  ${x.severity} [${x.code}] ${x.found}. ${x.consequence} ${x.remedy}`, w, '    ');
 }

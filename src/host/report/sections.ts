@@ -81,7 +81,7 @@ function numbers(list: readonly Quantity[]): Html {
 
 function warning(w: Warning): Html {
   return html`<p class="warning ${w.severity}">
-    <strong>${w.severity}</strong> <code>${w.code}</code> ${w.found} ${w.consequence} ${w.remedy}
+    <strong>${w.severity}</strong> <code>${w.code}</code> ${w.found}. ${w.consequence} ${w.remedy}
   </p>`;
 }
 
