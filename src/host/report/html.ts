@@ -17,7 +17,7 @@ export interface Html {
 }
 
 /** Template whose values are escaped unless they are Html themselves; lists are joined. */
-export function html(
+export function safe(
   parts: TemplateStringsArray,
   ...values: readonly (string | number | Html | readonly Html[])[]
 ): Html {

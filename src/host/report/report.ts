@@ -4,7 +4,7 @@ import type { RunResult } from '../../core/protocol/engine';
 import type { RecipeFile } from '../cli/recipe-file';
 import { CAUTION } from '../cli/result-text';
 import { distFolder } from '../node-host';
-import { html, scriptJson, type Html } from './html';
+import { safe, scriptJson, type Html } from './html';
 import { cardSection, inputSection } from './sections';
 
 /**
@@ -26,7 +26,7 @@ export function reportHtml(recipe: RecipeFile, result: RunResult): string {
   const name = basename(recipe.path);
   const { version, kernels } = result.engine;
   return `<!DOCTYPE html>\n${
-    html`<html lang="en">
+    safe`<html lang="en">
       <head>
         <meta charset="utf-8" />
         <meta name="viewport" content="width=device-width, initial-scale=1" />

@@ -3,7 +3,7 @@ import type { Table } from '../../core/data/table';
 import { utcText, parseGps } from '../../core/data/gps-time';
 import type { Card, InputProvenance } from '../../core/protocol/engine';
 import { number } from '../cli/format';
-import { html, type Html } from './html';
+import { safe, type Html } from './html';
 
 /** Parts of the report that read without any script: inputs, numbers, warnings, tables, provenance. */
 export function inputSection(i: InputProvenance): Html {
@@ -18,7 +18,7 @@ export function inputSection(i: InputProvenance): Html {
     ['Gaps', gaps],
     ['SHA-256 of the samples as little-endian float64', i.sha256],
   ];
-  return html`<section class="input">
+  return safe`<section class="input">
     <h2>Input ${i.name}</h2>
     ${pairs(rows)}
   </section>`;
@@ -28,28 +28,28 @@ export function inputSection(i: InputProvenance): Html {
 export function cardSection(card: Card, first: number): Html {
   const body =
     card.state === 'done'
-      ? html`<p class="sentence">${card.sentence}</p>
+      ? safe`<p class="sentence">${card.sentence}</p>
           ${card.figures.map(
             (f, k) =>
-              html`<figure data-figure="${first + k}">
+              safe`<figure data-figure="${first + k}">
                 <div class="plot" role="img" aria-label="${f.caption}"></div>
                 <figcaption>${f.title}. ${f.caption}</figcaption>
               </figure>`,
           )}
           ${numbers(card.numbers)}${card.warnings.map(warning)}${card.tables.map(table)}${provenance(card)}`
-      : html`<p class="problem">${card.state}: ${card.error?.message ?? ''}</p>`;
-  return html`<section class="card" id="step-${card.id}">
+      : safe`<p class="problem">${card.state}: ${card.error?.message ?? ''}</p>`;
+  return safe`<section class="card" id="step-${card.id}">
     <h2>${card.title} <small>${card.id}</small></h2>
     ${body}
   </section>`;
 }
 
 function pairs(rows: readonly (readonly [string, string])[]): Html {
-  return html`<table class="facts">
+  return safe`<table class="facts">
     <tbody>
       ${rows.map(
         ([k, v]) =>
-          html`<tr>
+          safe`<tr>
             <th scope="row">${k}</th>
             <td>${v}</td>
           </tr>`,
@@ -65,14 +65,14 @@ function numbers(list: readonly Quantity[]): Html {
       : `${number(q.low, 4)} to ${number(q.high, 4)}${q.intervalMeaning === undefined ? '' : ` (${q.intervalMeaning})`}`;
   const rows = list.map(
     (q) =>
-      html`<tr>
+      safe`<tr>
         <th scope="row">${q.label}</th>
         <td class="value">${number(q.value)} ${q.unit}</td>
         <td>${interval(q)}</td>
         <td>${q.convention ?? ''}</td>
       </tr>`,
   );
-  return html`<table class="numbers">
+  return safe`<table class="numbers">
     <tbody>
       ${rows}
     </tbody>
@@ -80,22 +80,22 @@ function numbers(list: readonly Quantity[]): Html {
 }
 
 function warning(w: Warning): Html {
-  return html`<p class="warning ${w.severity}">
+  return safe`<p class="warning ${w.severity}">
     <strong>${w.severity}</strong> <code>${w.code}</code> ${w.found}. ${w.consequence} ${w.remedy}
   </p>`;
 }
 
 function table(t: Table): Html {
   const head = t.columns.map(
-    (c) => html`<th scope="col">${c.unit === '' ? c.label : `${c.label} / ${c.unit}`}</th>`,
+    (c) => safe`<th scope="col">${c.unit === '' ? c.label : `${c.label} / ${c.unit}`}</th>`,
   );
   const rows = t.rows.map(
     (r) =>
-      html`<tr>
-        ${r.map((c) => html`<td>${c === null ? '–' : typeof c === 'number' ? number(c) : c}</td>`)}
+      safe`<tr>
+        ${r.map((c) => safe`<td>${c === null ? '–' : typeof c === 'number' ? number(c) : c}</td>`)}
       </tr>`,
   );
-  return html`<table class="rows">
+  return safe`<table class="rows">
     <caption>
       ${t.title}
     </caption>
@@ -111,8 +111,8 @@ function table(t: Table): Html {
 }
 
 function provenance({ provenance: p }: Card): Html {
-  if (!p) return html``;
-  return html`<details>
+  if (!p) return safe``;
+  return safe`<details>
     <summary>How this was made</summary>
     ${pairs([
       ['Step', `${p.step}, version ${p.version}`],
