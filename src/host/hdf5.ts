@@ -35,13 +35,14 @@ export function openHdf5(path: string, name: string, check: () => void): Hdf5Fil
   }
   let left = MOST_OBJECTS;
   let open = true;
-  const context: Context = { file, name, check, take: () => left-- > 0 };
+  const context: Context = { file, name, check, take: () => left-- > 0, seen: new Map() };
   const close = (): void => {
     if (open) file.close();
     open = false;
   };
   try {
-    return { root: groupOf(context, '/', new Set()), close };
+    context.seen.set(addressOf(context, '/'), '/');
+    return { root: groupOf(context, '/'), close };
   } catch (e) {
     close();
     throw e;
@@ -54,6 +55,8 @@ interface Context {
   readonly check: () => void;
   /** False when the tree is full. */
   readonly take: () => boolean;
+  /** Path of each object by its address, so that hard links do not show it twice or lead in circles. */
+  readonly seen: Map<string, string>;
 }
 
 function captured<T>(run: () => T): { result: T; messages: string } {
@@ -70,7 +73,7 @@ function damaged(context: Context, path: string, messages: string): UserError {
   );
 }
 
-function groupOf(context: Context, path: string, above: ReadonlySet<string>): Hdf5Group {
+function groupOf(context: Context, path: string): Hdf5Group {
   const groups: Hdf5Group[] = [];
   const datasets: Hdf5Dataset[] = [];
   const others: { path: string; what: string }[] = [];
@@ -90,20 +93,35 @@ function groupOf(context: Context, path: string, above: ReadonlySet<string>): Hd
       others.push({ path: child, what: 'and more objects, not listed' });
       break;
     }
-    const { result: kind } = captured(() => lib.get_type(id, child));
-    if (kind === lib.H5G_GROUP) {
-      // Links may form a loop; a path deeper than this is one.
-      if (above.size >= 32) others.push({ path: child, what: 'group, nested too deeply to list' });
-      else groups.push(groupOf(context, child, new Set([...above, child])));
-    } else if (kind === lib.H5G_DATASET) datasets.push(datasetOf(context, child));
-    else if (kind === lib.H5G_TYPE) others.push({ path: child, what: 'named type' });
-    else if (kind === lib.H5G_LINK) others.push({ path: child, what: 'link to a missing object' });
-    else if (kind === lib.H5G_UDLINK) {
-      const link = lib.get_external_link(id, child);
-      others.push({ path: child, what: `link into another file (${link.filename}), not followed` });
-    } else others.push({ path: child, what: 'unknown object' });
+    const { result: kind } = captured(() => kindOf(context, child));
+    if (typeof kind === 'string') others.push({ path: child, what: kind });
+    else if (kind === lib.H5G_GROUP) groups.push(groupOf(context, child));
+    else if (kind === lib.H5G_DATASET) datasets.push(datasetOf(context, child));
+    else others.push({ path: child, what: kind === lib.H5G_TYPE ? 'named type' : 'unknown object' });
   }
   return { path, attributes: attributesOf(context, path), groups, datasets, others };
+}
+
+/** Class number of an object seen for the first time, or a word on the link that is not followed. */
+function kindOf(context: Context, path: string): number | string {
+  const { Module: lib } = h5;
+  const id = context.file.file_id;
+  const target = lib.get_symbolic_link(id, path) as string | null;
+  if (target !== null) return `link to ${target}`;
+  const kind = lib.get_type(id, path);
+  if (kind === lib.H5G_UDLINK)
+    return `link into another file (${lib.get_external_link(id, path).filename}), not followed`;
+  if (kind < 0) return 'link to a missing object';
+  const address = addressOf(context, path);
+  const before = context.seen.get(address);
+  if (before !== undefined) return `the same object as ${before}`;
+  context.seen.set(address, path);
+  return kind;
+}
+
+/** An object reference holds the address of the object's header, which is the same for every link to it. */
+function addressOf(context: Context, path: string): string {
+  return Buffer.from(h5.Module.create_object_reference(context.file.file_id, path)).toString('hex');
 }
 
 function datasetOf(context: Context, path: string): Hdf5Dataset {

@@ -5,7 +5,7 @@ import { leafName, treeOf } from './hdf5-tree';
 import { meaningOf } from './meaning';
 import { openChannels, type ReadableChannel } from './open-channels';
 import { channelAxes, channelIndexName, rankChannels, typeNotes } from './channel-choice';
-import { fitStamps, readOnGrid, type TimeFit } from './time-axis';
+import { fitStamps, readOnGrid, scaled, type TimeFit } from './time-axis';
 
 const SIGNATURE = '\x89HDF\r\n\x1a\n';
 
@@ -119,10 +119,7 @@ function timeBeside(
     const fit = fitStamps({
       count: length,
       where: `dataset ${dataset.path}`,
-      read(from, to, into) {
-        dataset.read([0], 0, from, to, into);
-        if (means.factor !== 1) for (let i = 0; i < to - from; i++) into[i] *= means.factor;
-      },
+      read: scaled((from, to, into) => dataset.read([0], 0, from, to, into), means.factor),
       ...(means.scale ? { scale: means.scale } : {}),
     });
     fits.set(dataset.path, fit);

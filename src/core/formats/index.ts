@@ -2,9 +2,20 @@ import { UserError } from '../data/errors';
 import type { Format } from './format';
 import { hdf5Format } from './hdf5';
 import { npyFormat } from './npy';
+import { npzFormat } from './npz';
+import { rawFormat } from './raw';
+import { textFormat } from './text';
+import { wavFormat } from './wav';
 
 /** Every format that can be opened. A new format is one more entry; nothing else changes. */
-export const FORMATS: readonly Format[] = [hdf5Format, npyFormat];
+export const FORMATS: readonly Format[] = [
+  hdf5Format,
+  npyFormat,
+  npzFormat,
+  wavFormat,
+  textFormat,
+  rawFormat,
+];
 
 /** Bytes of the head that `recognise` wants to see. */
 export const HEAD_BYTES = 8192;

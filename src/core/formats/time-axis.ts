@@ -11,7 +11,7 @@ import { TimeTrack } from './time-track';
 export interface Stamps {
   readonly count: number;
   /** Stamps `[from, to)` into `into`. */
-  read(from: number, to: number, into: Float64Array): void;
+  readonly read: (from: number, to: number, into: Float64Array) => void;
   /** For the user: "dataset /time". */
   readonly where: string;
   readonly scale?: TimeScale;
@@ -30,6 +30,15 @@ export interface TimeFit extends FittedTime {
   /** Present when the stamps jump and the rate is known. */
   readonly grid?: TimeGrid;
   readonly notes: readonly string[];
+}
+
+/** A reader of stamps whose values are multiplied to seconds. */
+export function scaled(read: Stamps['read'], factor: number): Stamps['read'] {
+  if (factor === 1) return read;
+  return (from, to, into) => {
+    read(from, to, into);
+    for (let i = 0; i < to - from; i++) into[i] *= factor;
+  };
 }
 
 /** Fits numeric stamps read in blocks. */
