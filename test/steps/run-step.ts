@@ -1,13 +1,13 @@
 import type { AnyData } from '../../src/core/data/kinds';
 import { DEFAULT_VIEWPORT, type Figure, type Viewport } from '../../src/core/figures/figure';
-import { createKernels } from '../../src/core/kernels/kernels';
+import { createKernels, type Kernels } from '../../src/core/kernels/kernels';
 import { checkParam } from '../../src/core/protocol/param-check';
 import { bindInputs, portProblem } from '../../src/core/recipe/ports';
 import type { DataKind } from '../../src/core/data/kinds';
 import type { ParamSpecs, ParamValues, Step, StepOutcome } from '../../src/core/steps/define';
 
 /** The plain kernels: these tests are about the steps; that both kernels agree is tested with the kernels. */
-const kernels = createKernels(undefined);
+const plainKernels = createKernels(undefined);
 
 export interface StepRun<O extends DataKind> {
   readonly outcome: StepOutcome<O>;
@@ -25,7 +25,13 @@ export async function runStep<O extends DataKind, S extends ParamSpecs>(
   step: Step<O, S>,
   data: readonly AnyData[],
   given: Readonly<Record<string, unknown>> = {},
-  options: { memoryLimit?: number; files?: Readonly<Record<string, string>> } = {},
+  options: {
+    memoryLimit?: number;
+    files?: Readonly<Record<string, string>>;
+    kernels?: Kernels;
+    /** Called at each block; a throw ends the run as a cancel does. */
+    onBlock?: () => void;
+  } = {},
 ): Promise<StepRun<O>> {
   const names = data.map((d, i) => `${d.kind}-${i}`);
   const problem = portProblem(
@@ -46,16 +52,17 @@ export async function runStep<O extends DataKind, S extends ParamSpecs>(
   const inputs = bindInputs(names, data);
   let blocks = 0;
   const outcome = await step.run(inputs, params, {
-    kernels,
+    kernels: options.kernels ?? plainKernels,
     memoryLimit: options.memoryLimit ?? 512 * 2 ** 20,
     readText: (path) => {
       const text = options.files?.[path];
       if (text === undefined) throw new Error(`no file ${path}`);
       return text;
     },
-    block: () => {
+    block: async () => {
       blocks++;
-      return Promise.resolve();
+      options.onBlock?.();
+      await Promise.resolve();
     },
   });
   return {

@@ -22,3 +22,8 @@ export function counted(n: number, one: string, many = `${one}s`): string {
 export function withUnit(value: number, unit: string, digits = 4): string {
   return unit === '' ? numberText(value, digits) : `${numberText(value, digits)} ${unit}`;
 }
+
+/** Notes of a series that every later card must repeat, as sentences after another; "" when there are none. */
+export function repeated(notes: readonly string[] | undefined): string {
+  return (notes ?? []).map((n) => ` Note: ${n}.`).join('');
+}

@@ -4,7 +4,7 @@ import { complementSpans, type Span } from '../data/spans';
 import { columnsOf, extentOf, timeAxis } from './axis';
 import { envelopeOf } from './envelope';
 import type { Axis, Figure, Mark, TraceRole, Viewport } from './figure';
-import { counted, numberText, withUnit } from './number-text';
+import { counted, numberText, repeated, withUnit } from './number-text';
 import { thinLine, type Columns, type Thinned } from './thin';
 
 export interface SeriesFigureOptions {
@@ -26,15 +26,20 @@ export function seriesFigure(series: Series, viewport: Viewport, options: Series
   const x = timeAxis(series.start, seconds, viewport);
   const columns = columnsOf(x, viewport);
   const trace = thinSeries(series, columns);
-  const gaps = complementSpans(series.valid, series.length);
+  const spoilt = series.spoilt ?? [];
+  const gaps = complementSpans([...series.valid, ...spoilt], series.length);
   return {
     id: options.id ?? 'series',
     title: options.title ?? series.label,
-    caption: caption(series, x, trace, gaps, options.note),
+    caption: caption(series, x, trace, gaps, spoilt, options.note),
     x,
     y: valueAxis(series, trace),
     traces: [{ type: 'line', name: series.label, role: options.role ?? 'data', x: trace.x, y: trace.y }],
-    marks: [...spanMarks(gaps, series, columns, 'gap', 'gap'), ...(options.marks ?? [])],
+    marks: [
+      ...spanMarks(gaps, series, columns, 'gap', 'gap'),
+      ...spanMarks(spoilt, series, columns, 'cropped', 'filter edge'),
+      ...(options.marks ?? []),
+    ],
   };
 }
 
@@ -43,7 +48,7 @@ export function thinSeries(series: Series, columns: Columns): Thinned {
   const from = Math.max(0, Math.floor(columns.from * series.rate) - 1);
   const to = Math.min(series.length, Math.ceil(columns.to * series.rate) + 2);
   if (to - from > 2 * columns.width) {
-    const { cell, low, high } = envelopeOf(series);
+    const { cell, low, high } = series.scan?.envelope ?? envelopeOf(series);
     const first = Math.floor(from / cell);
     const last = Math.ceil(to / cell);
     if (cell > 1 && last - first >= columns.width) {
@@ -108,6 +113,7 @@ function caption(
   x: Axis,
   trace: Thinned,
   gaps: readonly Span[],
+  spoilt: readonly Span[],
   note: string | undefined,
 ): string {
   const [from, to] = x.range ?? x.extent;
@@ -120,6 +126,7 @@ function caption(
       : 'No valid sample in view.',
   ];
   if (gaps.length > 0) parts.push(`${counted(gaps.length, 'gap')} marked.`);
+  if (spoilt.length > 0) parts.push(`${counted(spoilt.length, 'filter edge')} marked: not to be used.`);
   if (note !== undefined) parts.push(note);
-  return parts.join(' ');
+  return parts.join(' ') + repeated(series.notes);
 }

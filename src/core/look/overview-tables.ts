@@ -1,7 +1,8 @@
 import { addSamples, formatGps, isPastLeapTable, utcText } from '../data/gps-time';
 import type { Series } from '../data/kinds';
-import { complementSpans, spanLength } from '../data/spans';
+import { spanLength } from '../data/spans';
 import type { Cell, Table } from '../data/table';
+import { gapsOf } from './sample-scan';
 import { LEAP_SECONDS } from '../data/leap-seconds';
 
 /** Rows a table of spans has at most; the rest is summed up in its last row. */
@@ -42,7 +43,8 @@ export function factsTable(series: Series): Table {
 export function spansTable(series: Series): Table {
   const all = [
     ...series.valid.map((s) => ({ ...s, what: 'data' })),
-    ...complementSpans(series.valid, series.length).map((s) => ({ ...s, what: 'gap' })),
+    ...(series.spoilt ?? []).map((s) => ({ ...s, what: 'filter edge' })),
+    ...gapsOf(series).map((s) => ({ ...s, what: 'gap' })),
   ].sort((a, b) => a.from - b.from);
   const rows: Cell[][] = all.slice(0, MOST).map(({ from, to, what }) => {
     const start = addSamples(series.start, from, series.rate);

@@ -1,8 +1,8 @@
 import type { Series } from '../data/kinds';
 import type { Warning } from '../data/quantity';
-import { complementSpans, spanLength } from '../data/spans';
+import { spanLength } from '../data/spans';
 import { counted, numberText, withUnit } from '../figures/number-text';
-import type { SampleScan } from './sample-scan';
+import { gapsOf, secondsOf, type SeriesScan } from './sample-scan';
 
 /** Runs of unusable samples from this many seconds on are called gaps, shorter ones bad samples. */
 const GAP_SECONDS = 1;
@@ -12,13 +12,13 @@ const FLOAT32_NORMAL = 1.1754943508222875e-38;
 const NEAR = 5e-3;
 
 /** What a first look has to warn of, most serious first. */
-export function overviewWarnings(series: Series, scan: SampleScan): Warning[] {
+export function overviewWarnings(series: Series, scan: SeriesScan): Warning[] {
   const found = [
     ...empty(series, scan),
     ...holes(series),
     ...constant(series, scan),
     ...saturated(series, scan),
-    ...flat(series, scan),
+    ...zeros(series, scan),
     ...counts(series, scan),
     ...rate(series),
     ...small(series, scan),
@@ -27,13 +27,13 @@ export function overviewWarnings(series: Series, scan: SampleScan): Warning[] {
   return found.sort((a, b) => order[a.severity] - order[b.severity]);
 }
 
-function empty(series: Series, { stats }: SampleScan): Warning[] {
-  if (stats.count > 0) return [];
+function empty(series: Series, { used }: SeriesScan): Warning[] {
+  if (used > 0) return [];
   return [
     {
       code: 'no-valid-samples',
       severity: 'problem',
-      found: `none of the ${series.length} samples is a finite number`,
+      found: `none of the ${series.length} samples can be used`,
       value: series.length,
       consequence: 'Nothing can be computed from this span.',
       remedy: 'Choose another span or channel.',
@@ -43,7 +43,7 @@ function empty(series: Series, { stats }: SampleScan): Warning[] {
 
 function holes(series: Series): Warning[] {
   const out: Warning[] = [];
-  const all = complementSpans(series.valid, series.length);
+  const all = gapsOf(series);
   const long = all.filter((s) => s.to - s.from >= GAP_SECONDS * series.rate);
   const short = all.filter((s) => s.to - s.from < GAP_SECONDS * series.rate);
   if (short.length > 0) {
@@ -59,7 +59,7 @@ function holes(series: Series): Warning[] {
     });
   }
   if (long.length > 0) {
-    const seconds = spanLength(long) / series.rate;
+    const seconds = secondsOf(long, series);
     out.push({
       code: 'gaps',
       severity: 'caution',
@@ -74,13 +74,13 @@ function holes(series: Series): Warning[] {
   return out;
 }
 
-function constant(series: Series, { stats }: SampleScan): Warning[] {
-  if (stats.count < 2 || stats.min !== stats.max) return [];
+function constant(series: Series, { stats, used }: SeriesScan): Warning[] {
+  if (used < 2 || stats.min !== stats.max) return [];
   return [
     {
       code: 'constant',
       severity: 'problem',
-      found: `all ${stats.count} valid samples are ${withUnit(stats.min, series.unit)}`,
+      found: `all ${used} valid samples are ${withUnit(stats.min, series.unit)}`,
       value: stats.min,
       consequence: 'There is no signal and no noise in it; spectra of it are zero.',
       remedy: 'Check the channel name and whether the instrument was recording.',
@@ -88,13 +88,13 @@ function constant(series: Series, { stats }: SampleScan): Warning[] {
   ];
 }
 
-function saturated(series: Series, { stats, saturated: runs }: SampleScan): Warning[] {
+function saturated(series: Series, { stats, saturated: runs }: SeriesScan): Warning[] {
   if (runs.length === 0) return [];
   return [
     {
       code: 'saturated',
       severity: 'caution',
-      found: `${counted(stats.saturated, 'sample')} in ${counted(runs.length, 'run')} of 4 or more at the smallest or largest value (${withUnit(stats.min, series.unit)}, ${withUnit(stats.max, series.unit)})`,
+      found: `${counted(stats.saturated, 'sample')} in ${counted(runs.length, 'run')} of 8 or more at the smallest or largest value (${withUnit(stats.min, series.unit)}, ${withUnit(stats.max, series.unit)})`,
       value: stats.saturated,
       consequence: 'The signal was cut off there; the sharp corners spread power over all frequencies.',
       remedy: 'Leave these times out (parameter "exclude" of the noise spectrum) or choose another span.',
@@ -102,25 +102,22 @@ function saturated(series: Series, { stats, saturated: runs }: SampleScan): Warn
   ];
 }
 
-function flat(series: Series, { stats, flat: runs }: SampleScan): Warning[] {
+function zeros(series: Series, { stats, zeros: runs }: SeriesScan): Warning[] {
   if (runs.length === 0 || stats.min === stats.max) return [];
-  const seconds = spanLength(runs) / series.rate;
-  const first = runs[0];
-  const [value] = series.read(first.from, first.from + 1);
+  const seconds = secondsOf(runs, series);
   return [
     {
-      code: 'flat-stretch',
+      code: 'digital-zeros',
       severity: 'caution',
-      found: `${counted(runs.length, 'stretch', 'stretches')} of one repeated value, ${numberText(seconds)} s together, the first of ${withUnit(value, series.unit)} at ${numberText(first.from / series.rate, 9)} s`,
+      found: `${counted(runs.length, 'stretch', 'stretches')} of exact zeros, ${numberText(seconds)} s together, the first at ${numberText(runs[0].from / series.rate, 9)} s`,
       value: seconds,
-      consequence:
-        'Missing data filled with a constant counts as quiet data and lowers every noise estimate.',
+      consequence: 'Missing data filled with zeros counts as quiet data and lowers every noise estimate.',
       remedy: 'Leave these times out (parameter "exclude" of the noise spectrum) or choose another span.',
     },
   ];
 }
 
-function counts(series: Series, { stats, whole }: SampleScan): Warning[] {
+function counts(series: Series, { stats, whole }: SeriesScan): Warning[] {
   const size = Math.max(Math.abs(stats.min), Math.abs(stats.max));
   if (!whole || stats.min === stats.max || size < 2 || /^counts?$/i.test(series.unit)) return [];
   return [
@@ -159,7 +156,7 @@ function rate(series: Series): Warning[] {
   ];
 }
 
-function small(series: Series, { deviation }: SampleScan): Warning[] {
+function small(series: Series, { deviation }: SeriesScan): Warning[] {
   const density = (2 * deviation ** 2) / series.rate;
   if (!(deviation > 0 && density < FLOAT32_NORMAL)) return [];
   return [

@@ -81,7 +81,7 @@ function tooLong(series: Series, usable: readonly Span[], size: number, excludin
   const fits = longest / series.rate;
   return new UserError(
     'segment-long',
-    `no segment of ${numberText(size / series.rate)} s fits: the longest ${what} in ${series.label} is ${numberText(fits)} s; set "segment" to ${suggestion(fits)} or less`,
+    `no segment of ${numberText(size / series.rate)} s fits: the longest ${what} in ${series.label} is ${numberText(fits)} s; set "segment" to ${suggestion(fits)} s or less`,
   );
 }
 

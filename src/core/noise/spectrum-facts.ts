@@ -41,7 +41,7 @@ export function spectrumFacts(
   detrended: number,
 ): SpectrumFacts {
   const bins = bandBins(frequency, band);
-  const inside = density.slice(bins[0], bins[1]);
+  const inside = density.slice(bins[0], bins[1]).map(Math.sqrt);
   let at = bins[0];
   for (let k = bins[0]; k < bins[1]; k++) if (density[k] < density[at]) at = k;
   let low = Infinity;
@@ -59,7 +59,7 @@ export function spectrumFacts(
   return {
     band,
     bins,
-    floor: Math.sqrt(median(inside)),
+    floor: median(inside),
     lowest: Math.sqrt(density[at]),
     lowestAt: frequency[at],
     parseval: Math.sqrt(sum * df),

@@ -158,7 +158,7 @@ function outside({ plan, exclude, series }: WarningFacts): Warning[] {
 }
 
 function rounding({ estimate, facts, series }: WarningFacts): Warning[] {
-  if (!estimate.float32 || !(estimate.moments.rms > 0)) return [];
+  if (!estimate.float32 || !(estimate.moments.rms > 0) || facts.lowest === 0) return [];
   // Rounding error of a value v is uniform in ±2^-24 |v| / m with m in [1, 2); for m spread evenly in log, ⟨1/m²⟩ = 3/(8 ln 2).
   const variance = (estimate.moments.rms ** 2 * 2 ** -46 * (3 / (8 * Math.LN2))) / 12;
   const density = (2 * variance) / series.rate;

@@ -3,7 +3,7 @@ import { addSamples } from '../data/gps-time';
 import type { Series, Spectrum, SpectrumEstimate } from '../data/kinds';
 import { spanLength } from '../data/spans';
 import type { Mark } from '../figures/figure';
-import { counted, numberText, withUnit } from '../figures/number-text';
+import { counted, numberText, repeated, withUnit } from '../figures/number-text';
 import { spectrumFigure } from '../figures/spectrum';
 import { makeWindow } from '../kernels/windows';
 import { windowFigures } from '../kernels/window-figures';
@@ -228,6 +228,7 @@ function sentence(
     `from ${numberText(spanLength(plan.used) / series.rate, 9)} s of ${series.label}: one-sided density in ${spectrum.unit} ` +
     `(drawn as its root in ${amplitudeUnit(spectrum.unit)}), resolution ${withUnit(e.enbw, 'Hz')}` +
     (left === 0 ? '' : `; ${counted(left, 'span')} left out`) +
-    (passes === 1 ? '.' : `; read ${passes} times to stay within the memory limit.`)
+    (passes === 1 ? '.' : `; read ${passes} times to stay within the memory limit.`) +
+    repeated(series.notes)
   );
 }

@@ -1,11 +1,10 @@
 import { addSamples, formatGps, utcText } from '../data/gps-time';
 import type { Quantity } from '../data/quantity';
-import { complementSpans } from '../data/spans';
-import { counted, numberText, withUnit } from '../figures/number-text';
+import { counted, numberText, repeated, withUnit } from '../figures/number-text';
 import { overviewFigures, type OverviewDetail } from '../figures/overview';
 import { factsTable, spansTable } from '../look/overview-tables';
 import { overviewWarnings } from '../look/overview-warnings';
-import { scanSamples, type SampleScan } from '../look/sample-scan';
+import { gapsOf, scanSeries, type SeriesScan } from '../look/sample-scan';
 import type { Series } from '../data/kinds';
 import { defineStep } from './define';
 
@@ -26,7 +25,7 @@ export default defineStep({
   ],
   async run(inputs, _params, context) {
     const series = inputs.one('series');
-    const scan = await scanSamples(series, (fraction) => context.block(fraction));
+    const scan = await scanSeries(series, (fraction) => context.block(fraction));
     const data: OverviewDetail = {
       kind: 'overview',
       series,
@@ -47,18 +46,19 @@ export default defineStep({
   figures: (data, _params, _inputs, viewport) => overviewFigures(data, viewport),
 });
 
-function sentence(series: Series, { stats }: SampleScan): string {
-  const gaps = complementSpans(series.valid, series.length).length;
+function sentence(series: Series, { stats }: SeriesScan): string {
+  const gaps = gapsOf(series).length;
   const end = addSamples(series.start, series.length, series.rate);
   return (
     `${numberText(series.length / series.rate, 9)} s of ${series.label} at ${withUnit(series.rate, 'Hz', 9)}, ` +
     `GPS ${formatGps(series.start)} to ${formatGps(end)} (from ${utcText(series.start)}), ` +
     `rms ${withUnit(stats.rms, series.unit)} about zero, ` +
-    (gaps === 0 ? 'without gaps.' : `${counted(gaps, 'gap')}.`)
+    (gaps === 0 ? 'without gaps.' : `${counted(gaps, 'gap')}.`) +
+    repeated(series.notes)
   );
 }
 
-function numbers(series: Series, scan: SampleScan): Quantity[] {
+function numbers(series: Series, scan: SeriesScan): Quantity[] {
   const { stats, robust } = scan;
   const unit = series.unit;
   const values: Quantity[] = [
@@ -72,21 +72,21 @@ function numbers(series: Series, scan: SampleScan): Quantity[] {
     },
     { id: 'samples', label: 'Samples', value: series.length, unit: '' },
     {
-      id: 'not-finite',
-      label: 'Not finite or missing',
-      value: stats.notFinite,
+      id: 'unusable',
+      label: 'Not usable',
+      value: series.length - scan.used,
       unit: '',
-      convention: 'samples',
+      convention: 'samples not finite, missing, or spoilt by a filter edge',
     },
     {
       id: 'saturated',
       label: 'Saturated',
       value: stats.saturated,
       unit: '',
-      convention: 'samples in cut-off runs of 4 or more at an extreme',
+      convention: 'samples in cut-off runs of 8 or more at an extreme',
     },
   ];
-  if (stats.count === 0) return values;
+  if (scan.used === 0) return values;
   return [
     ...values,
     { id: 'min', label: 'Smallest', value: stats.min, unit, convention: 'valid samples' },
