@@ -1,0 +1,45 @@
+import * as vscode from 'vscode';
+import type { Addable } from '../../core/protocol/panel';
+import { freshId, type NewStep } from '../../core/recipe/edit';
+import { addableSteps } from './addable';
+import { applyRecipeEdit } from './documents';
+import type { LookSession } from './look-session';
+
+const GROUP_WORDS: Record<Addable['group'], string> = {
+  look: 'Look',
+  noise: 'Noise',
+  condition: 'Condition',
+  picture: 'Picture',
+  signal: 'Signal',
+  search: 'Search',
+};
+
+/** Adds a step at the end under an id of its own; gives the id back when the document was changed. */
+export async function addStep(session: LookSession, step: NewStep): Promise<string | undefined> {
+  const recipe = session.recipe;
+  if (!recipe) return undefined;
+  const taken = [...Object.keys(recipe.inputs), ...recipe.steps.map((s) => s.id)];
+  const id = step.id ?? freshId(step.do, taken);
+  return (await applyRecipeEdit(session.document, { op: 'add', step: { ...step, id } })) ? id : undefined;
+}
+
+/** Asks which step to add, from those that the recipe's data can feed. */
+export async function pickStep(session: LookSession): Promise<void> {
+  if (!session.recipe) {
+    void vscode.window.showWarningMessage('The recipe cannot be read: mend its text first, then add a step.');
+    return;
+  }
+  const items = addableSteps(session.recipe, session.steps).map((a) => ({
+    label: a.title,
+    description: `${GROUP_WORDS[a.group]}, of ${a.of.join(', ')}`,
+    detail: a.summary,
+    step: a,
+  }));
+  const picked = await vscode.window.showQuickPick(items, {
+    title: 'Add a step to the look',
+    placeHolder: 'What should be done next?',
+    matchOnDescription: true,
+    matchOnDetail: true,
+  });
+  if (picked) await addStep(session, { do: picked.step.do, of: picked.step.of });
+}

@@ -1,0 +1,81 @@
+import type { Mark, TraceRole } from '../../src/core/figures/figure';
+
+export type ThemeKind = 'light' | 'dark' | 'contrast-light' | 'contrast-dark';
+
+export interface Stroke {
+  readonly colour: string;
+  readonly width: number;
+  readonly dash: 'solid' | 'dash' | 'dot' | 'dashdot';
+}
+
+/**
+ * Colours of the figures by what a trace stands for. Chosen so that each keeps a contrast of at least 3 to the ground
+ * of its theme and the roles stay apart in normal and in colour-deficient sight (test/webview/colours.test.ts
+ * computes both); reference and model differ by their dashes too.
+ */
+const ROLES: Readonly<Record<ThemeKind, Readonly<Record<Exclude<TraceRole, 'interval'>, string>>>> = {
+  light: { data: '#0b4f8a', second: '#c25a00', third: '#a33a8f', reference: '#6a6a6a', model: '#1f7a55' },
+  dark: { data: '#6fb7ee', second: '#f0a04b', third: '#e39ad6', reference: '#a6a6a6', model: '#5fc99a' },
+  'contrast-light': {
+    data: '#00386b',
+    second: '#9a3f00',
+    third: '#7d0f6b',
+    reference: '#292929',
+    model: '#00583a',
+  },
+  'contrast-dark': {
+    data: '#7cc8ff',
+    second: '#ffb347',
+    third: '#ff9df0',
+    reference: '#ffffff',
+    model: '#66f0b0',
+  },
+};
+
+const DASH: Readonly<Record<TraceRole, Stroke['dash']>> = {
+  data: 'solid',
+  second: 'solid',
+  third: 'solid',
+  reference: 'dot',
+  model: 'dash',
+  interval: 'solid',
+};
+
+const MARKS: Readonly<
+  Record<Mark['role'], { readonly role: TraceRole; readonly fill: number; readonly dash: Stroke['dash'] }>
+> = {
+  gap: { role: 'reference', fill: 0.22, dash: 'dot' },
+  cropped: { role: 'reference', fill: 0.12, dash: 'dash' },
+  saturated: { role: 'second', fill: 0.2, dash: 'solid' },
+  event: { role: 'third', fill: 0.14, dash: 'dashdot' },
+};
+
+export const THEME_KINDS: readonly ThemeKind[] = ['light', 'dark', 'contrast-light', 'contrast-dark'];
+
+/** Line of a trace. An interval is drawn in the colour of the data it belongs to. */
+export function strokeOf(role: TraceRole, theme: ThemeKind): Stroke {
+  const thick = theme.startsWith('contrast') ? 1 : 0;
+  const width = (role === 'reference' || role === 'model' ? 1.6 : 1.2) + 0.6 * thick;
+  return { colour: ROLES[theme][role === 'interval' ? 'data' : role], width, dash: DASH[role] };
+}
+
+/** Fill of a band or bar. */
+export function fillOf(
+  role: TraceRole,
+  theme: ThemeKind,
+  opacity = role === 'interval' ? 0.25 : 0.55,
+): string {
+  return withOpacity(strokeOf(role, theme).colour, opacity);
+}
+
+/** Fill and outline of a marked stretch. */
+export function markStyle(role: Mark['role'], theme: ThemeKind): Stroke & { readonly fill: string } {
+  const { role: trace, fill, dash } = MARKS[role];
+  const { colour } = strokeOf(trace, theme);
+  return { colour, width: 1, dash, fill: withOpacity(colour, fill) };
+}
+
+function withOpacity(hex: string, opacity: number): string {
+  const parts = [1, 3, 5].map((i) => parseInt(hex.slice(i, i + 2), 16));
+  return `rgba(${parts.join(', ')}, ${opacity})`;
+}

@@ -1,0 +1,125 @@
+import { useEffect, useId, useState } from 'preact/hooks';
+import type { JSX } from 'preact';
+import type { Figure, Viewport } from '../../src/core/figures/figure';
+import { Legend } from './legend';
+import { Plot } from './plot';
+import { keyAction } from './keys';
+import type { Readout } from './readout';
+import { DataTable } from './table';
+import { tablesOf } from './table-of';
+import { onThemeChange, readTheme } from './theme';
+import { PLOT_MARGIN } from './to-plotly';
+import type { Views } from './views';
+
+interface Props {
+  readonly figure: Figure;
+  readonly viewKey: string;
+  readonly views: Views;
+  /** Asks for the figure thinned to another view; the answer comes as another `figure`. */
+  readonly onViewport: (viewport: Viewport) => void;
+  readonly onCopy: (text: string, what: string) => void;
+  readonly onLeave: () => void;
+  /** Shown as text from the start, and told when that changes, so it survives a rebuilt page. */
+  readonly asText: boolean;
+  readonly onAsText: (asText: boolean) => void;
+  /** The result the figure belongs to; a new one must be asked for the view again. */
+  readonly result: string;
+}
+
+const REDRAW_MS = 120;
+
+/** A figure with its legend, buttons, caption, and its table when shown as text; both fill the same reserved place. */
+export function FigureBox(p: Props): JSX.Element {
+  const { figure, viewKey, views, asText } = p;
+  const [readout, setReadout] = useState<Readout>();
+  const [, again] = useState(0);
+  const [theme, setTheme] = useState(() => readTheme().kind);
+  const caption = useId();
+  useEffect(() => views.onChange(() => again((n) => n + 1)), [views]);
+  useEffect(() => onThemeChange(() => setTheme(readTheme().kind)), []);
+  useEffect(() => views.register(viewKey, figure), [views, viewKey, figure]);
+  const view = views.of(viewKey);
+  const [from, to] = view.x ?? [];
+
+  useEffect(() => {
+    if (from === undefined || to === undefined) return undefined;
+    const timer = setTimeout(() => p.onViewport({ width: plotWidth(), x: [from, to] }), REDRAW_MS);
+    return () => clearTimeout(timer);
+  }, [from, to, viewKey, p.result]);
+
+  const press = (key: string): void => {
+    const next = keyAction(key, figure, view);
+    if (next) views.set(viewKey, next);
+  };
+  const isZoomed = view.x !== undefined || view.y !== undefined;
+  return (
+    <figure class="figure" data-figure={figure.id}>
+      <div class="figure-head">
+        <span class="figure-title">{figure.title}</span>
+        <span class="figure-buttons">
+          <button
+            type="button"
+            class="text-button"
+            disabled={asText}
+            onClick={() => press('-')}
+            aria-label="Zoom out"
+          >
+            −
+          </button>
+          <button
+            type="button"
+            class="text-button"
+            disabled={asText}
+            onClick={() => press('+')}
+            aria-label="Zoom in"
+          >
+            +
+          </button>
+          <button
+            type="button"
+            class="text-button"
+            data-action="reset-zoom"
+            disabled={!isZoomed}
+            onClick={() => views.set(viewKey, {})}
+          >
+            Reset zoom
+          </button>
+          <button
+            type="button"
+            class="text-button"
+            data-action="as-text"
+            aria-pressed={asText}
+            onClick={() => p.onAsText(!asText)}
+          >
+            Show as text
+          </button>
+        </span>
+      </div>
+      <Legend figure={figure} theme={theme} readout={readout} />
+      {asText ? (
+        <div class="figure-text">
+          {tablesOf(figure).map((t) => (
+            <DataTable key={t.id} table={t} onCopy={p.onCopy} first={40} />
+          ))}
+        </div>
+      ) : (
+        <Plot
+          figure={figure}
+          view={view}
+          onView={(next) => views.set(viewKey, next)}
+          onRead={setReadout}
+          describedBy={caption}
+          onLeave={p.onLeave}
+        />
+      )}
+      <figcaption id={caption}>{figure.caption}</figcaption>
+    </figure>
+  );
+}
+
+/** Pixels the plotting area has: what figures are thinned to. */
+export function plotWidth(): number {
+  const plot = document.querySelector('.plot-frame');
+  const width = plot ? plot.clientWidth : Math.min(document.documentElement.clientWidth, 1100);
+  return Math.max(200, Math.round(width - PLOT_MARGIN.l - PLOT_MARGIN.r));
+}

@@ -1,0 +1,77 @@
+import type { JSX } from 'preact';
+import type { Figure } from '../../src/core/figures/figure';
+import { markStyle, strokeOf, fillOf, type Stroke, type ThemeKind } from './colours';
+import type { Readout } from './readout';
+import { axisTitle } from './to-plotly';
+
+const DASHES: Readonly<Record<Stroke['dash'], string>> = {
+  solid: 'none',
+  dash: '6 3',
+  dot: '1.5 3',
+  dashdot: '6 3 1.5 3',
+};
+
+interface Props {
+  readonly figure: Figure;
+  readonly theme: ThemeKind;
+  readonly readout: Readout | undefined;
+}
+
+/** Names of the traces with a sample of their line; under the pointer also their values, so nothing covers the data. */
+export function Legend({ figure, theme, readout }: Props): JSX.Element {
+  const marks = [...new Map(figure.marks.map((m) => [m.role, m])).keys()];
+  return (
+    <div class="legend">
+      <ul class="legend-names">
+        {figure.traces.map((t, i) => {
+          const stroke = strokeOf(t.role, theme);
+          return (
+            <li key={i}>
+              <svg class="swatch" viewBox="0 0 22 10" aria-hidden="true">
+                {t.type !== 'line' && <rect x="0" y="1" width="22" height="8" fill={fillOf(t.role, theme)} />}
+                {t.type === 'line' && (
+                  <line
+                    x1="0"
+                    y1="5"
+                    x2="22"
+                    y2="5"
+                    stroke={stroke.colour}
+                    stroke-width="2"
+                    stroke-dasharray={DASHES[stroke.dash]}
+                  />
+                )}
+              </svg>
+              <span class="trace-name">{t.name}</span>
+              {readout?.values[i] !== undefined && <span class="trace-value">{readout.values[i]}</span>}
+            </li>
+          );
+        })}
+        {marks.map((role) => {
+          const style = markStyle(role, theme);
+          return (
+            <li key={role}>
+              <svg class="swatch" viewBox="0 0 22 10" aria-hidden="true">
+                <rect
+                  x="0.5"
+                  y="0.5"
+                  width="21"
+                  height="9"
+                  fill={style.fill}
+                  stroke={style.colour}
+                  stroke-dasharray={DASHES[style.dash]}
+                />
+              </svg>
+              <span class="trace-name">{role}</span>
+            </li>
+          );
+        })}
+      </ul>
+      <p class="under">
+        <span class="y-title">{axisTitle(figure.y)}</span>
+        <span class="readout" aria-hidden="true">
+          {readout?.at}
+        </span>
+      </p>
+    </div>
+  );
+}

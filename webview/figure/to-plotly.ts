@@ -1,0 +1,187 @@
+import type { Axis, Figure, Mark, Trace } from '../../src/core/figures/figure';
+import { fillOf, markStyle, strokeOf } from './colours';
+import type { PlotlyLayout, PlotlyTrace } from './plotly-types';
+import { inPlace, valueRange, type Range, type View } from './ranges';
+import type { Theme } from './theme';
+
+/** Config for every plot: our own buttons and keys instead of the library's bar. */
+export const PLOT_CONFIG = {
+  displayModeBar: false,
+  responsive: false,
+  doubleClick: false,
+  scrollZoom: false,
+} as const;
+
+/** Room around the plotting area in pixels. */
+export const PLOT_MARGIN = { l: 76, r: 14, t: 8, b: 42 } as const;
+
+/**
+ * A figure as the library's traces and layout, for a view of it in a theme. The panel writes the title of the value
+ * axis above the plot, where it can be long; elsewhere `titles` puts it beside the axis.
+ */
+export function toPlotly(
+  figure: Figure,
+  view: View,
+  theme: Theme,
+  titles: 'both' | 'x' = 'both',
+): { data: PlotlyTrace[]; layout: PlotlyLayout } {
+  const layout = layoutOf(figure, view, theme, titles === 'both');
+  return { data: figure.traces.flatMap((t) => traceOf(t, theme)), layout };
+}
+
+function traceOf(trace: Trace, theme: Theme): PlotlyTrace[] {
+  const { colour, width, dash } = strokeOf(trace.role, theme.kind);
+  const common = { name: trace.name, showlegend: false, hoverinfo: 'none' };
+  switch (trace.type) {
+    case 'line':
+      return [
+        {
+          ...common,
+          type: 'scatter',
+          mode: 'lines',
+          x: trace.x,
+          y: trace.y,
+          connectgaps: false,
+          line: { color: colour, width, dash, simplify: false },
+        },
+      ];
+    case 'range': {
+      const { x, y } = outline(trace.x, trace.low, trace.high);
+      const interval = trace.role === 'interval';
+      return [
+        {
+          ...common,
+          type: 'scatter',
+          mode: 'lines',
+          x,
+          y,
+          fill: 'toself',
+          fillcolor: fillOf(trace.role, theme.kind),
+          line: { color: colour, width: interval ? 0 : 1, simplify: false },
+          hoverinfo: 'skip',
+        },
+      ];
+    }
+    case 'bars': {
+      const centre = Float64Array.from(trace.counts, (_, i) => (trace.edges[i] + trace.edges[i + 1]) / 2);
+      const widths = Float64Array.from(trace.counts, (_, i) => trace.edges[i + 1] - trace.edges[i]);
+      return [
+        {
+          ...common,
+          type: 'bar',
+          x: centre,
+          y: trace.counts,
+          width: widths,
+          marker: { color: fillOf(trace.role, theme.kind), line: { color: colour, width: 0 } },
+        },
+      ];
+    }
+  }
+}
+
+/** Closed outlines, one per unbroken stretch, since a fill between two lines bridges their gaps. */
+export function outline(
+  x: Float64Array,
+  low: Float64Array,
+  high: Float64Array,
+): { x: number[]; y: (number | null)[] } {
+  const outX: number[] = [];
+  const outY: (number | null)[] = [];
+  const good = (i: number): boolean => Number.isFinite(low[i]) && Number.isFinite(high[i]);
+  for (let i = 0; i < x.length; i++) {
+    if (!good(i)) continue;
+    let end = i;
+    while (end < x.length && good(end)) end++;
+    if (outX.length > 0) {
+      outX.push(x[i]);
+      outY.push(null);
+    }
+    for (let k = i; k < end; k++) {
+      outX.push(x[k]);
+      outY.push(high[k]);
+    }
+    for (let k = end - 1; k >= i; k--) {
+      outX.push(x[k]);
+      outY.push(low[k]);
+    }
+    outX.push(x[i]);
+    outY.push(high[i]);
+    i = end;
+  }
+  return { x: outX, y: outY };
+}
+
+function layoutOf(figure: Figure, view: View, theme: Theme, valueTitle: boolean): PlotlyLayout {
+  const x = view.x ?? figure.x.extent;
+  const y = view.y ?? valueRange(figure, x);
+  return {
+    autosize: true,
+    margin: { ...PLOT_MARGIN, pad: 0 },
+    paper_bgcolor: 'transparent',
+    plot_bgcolor: 'transparent',
+    font: { family: theme.font, size: theme.fontSize, color: theme.text },
+    showlegend: false,
+    hovermode: 'x',
+    dragmode: 'zoom',
+    bargap: 0,
+    xaxis: axisOf(figure.x, inPlace(x, figure.x), theme, true),
+    yaxis: axisOf(figure.y, inPlace(y, figure.y), theme, valueTitle),
+    shapes: figure.marks.map((m) => shapeOf(m, theme)),
+  };
+}
+
+function axisOf(axis: Axis, range: Range, theme: Theme, titled: boolean): Record<string, unknown> {
+  return {
+    type: axis.scale,
+    range: [...range],
+    ...(titled ? { title: { text: axisTitle(axis), standoff: 8, font: { size: theme.fontSize } } } : {}),
+    autorange: false,
+    gridcolor: theme.grid,
+    linecolor: theme.muted,
+    tickcolor: theme.muted,
+    ticks: 'outside',
+    ticklen: 4,
+    showline: true,
+    mirror: true,
+    zeroline: false,
+    exponentformat: 'power',
+    minexponent: 4,
+    separatethousands: false,
+    showspikes: axis.link !== undefined || axis.scale === 'linear',
+    spikemode: 'across',
+    spikethickness: 1,
+    spikecolor: theme.muted,
+    spikedash: 'dot',
+    spikesnap: 'hovered data',
+    ...(axis.scale === 'log' ? logTicks(range[1] - range[0], theme) : {}),
+  };
+}
+
+/** Labels at whole decades where there are enough of them, else at 1, 2 and 5, with unlabelled ticks between. */
+function logTicks(decades: number, theme: Theme): Record<string, unknown> {
+  const minor = { minor: { dtick: 'D1', ticks: 'outside', ticklen: 2, tickcolor: theme.muted } };
+  if (decades > 1.6) return { dtick: Math.ceil(decades / 8), ...(decades > 8 ? {} : minor) };
+  return decades > 0.4 ? { dtick: 'D2', ...minor } : {};
+}
+
+/** "Frequency [Hz]": label and unit. */
+export function axisTitle(axis: Axis): string {
+  return axis.unit === '' ? axis.label : `${axis.label} [${axis.unit}]`;
+}
+
+function shapeOf(mark: Mark, theme: Theme): Record<string, unknown> {
+  const { colour, width, dash, fill } = markStyle(mark.role, theme.kind);
+  const thin = mark.from === mark.to;
+  return {
+    type: thin ? 'line' : 'rect',
+    layer: 'below',
+    xref: 'x',
+    yref: 'paper',
+    x0: mark.from,
+    x1: mark.to,
+    y0: 0,
+    y1: 1,
+    line: { color: colour, width, dash },
+    ...(thin ? {} : { fillcolor: fill }),
+  };
+}

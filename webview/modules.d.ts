@@ -1,0 +1,2 @@
+declare module '*.css';
+declare module 'plotly.js-basic-dist-min';
