@@ -8,7 +8,7 @@ import { gzipHeaderEnd } from './gzip-header';
 /** Compressed bytes fed at once. Deflate grows at most 1032 times, so one step makes at most 16 MiB. */
 const FEED = 1 << 14;
 /** Bytes of output between two points from which inflating can be taken up again. */
-const BETWEEN_POINTS = 1 << 24;
+const BETWEEN_POINTS = 1 << 23;
 /** Output kept for reads near the last one. */
 const KEPT = 1 << 23;
 
@@ -41,8 +41,8 @@ interface Point {
 }
 
 /**
- * Compressed bytes read at any offset of what they inflate to. It is inflated forwards once; every 16 MiB of output the
- * state is kept (about 40 kB), so that going back costs at most 16 MiB of inflating and never the whole. The check sums
+ * Compressed bytes read at any offset of what they inflate to. It is inflated forwards once; every 8 MiB of output the
+ * state is kept (about 40 kB), so that going back costs at most 8 MiB of inflating and never the whole. The check sums
  * are verified as the end is first reached. `size` is Infinity until then, unless it is given.
  */
 export class Inflated implements ByteSource {
@@ -100,7 +100,7 @@ export class Inflated implements ByteSource {
     if (this.#end !== undefined && at >= this.#end) return false;
     const best = this.#points.findLast((p) => p.output <= at);
     if (best && (at < this.#output || best.output > this.#output)) this.#restore(best);
-    while (this.#output <= at) if (!this.#step()) return false;
+    while (this.#output <= at) if (!this.#step()) return at < this.#output;
     return true;
   }
 

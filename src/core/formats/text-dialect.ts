@@ -73,7 +73,8 @@ function guess(lines: readonly Line[], delimiter: Delimiter): Guess {
   const counts = new Map<number, number>();
   for (const { cells } of numeric) counts.set(cells.length, (counts.get(cells.length) ?? 0) + 1);
   const columns = [...counts].sort((a, b) => b[1] - a[1]).at(0)?.[0] ?? 0;
-  const rows = numeric.filter(({ cells }) => cells.length === columns);
+  // One column with decimal commas cannot be told from two columns of whole numbers; the second is what is written more often.
+  const rows = columns === 1 && decimalComma ? [] : numeric.filter(({ cells }) => cells.length === columns);
   const open = columns > 1 && rows.every(({ cells }) => cells.at(-1) === '');
   return { style: { delimiter, decimalComma }, rows, columns: open ? columns - 1 : columns };
 }

@@ -18,8 +18,7 @@ const PROBE = 1000;
  */
 export class TimeTrack {
   readonly stretches: TimeStretch[] = [];
-  /** True when the steps are too uneven for a sampled series. */
-  uneven = false;
+  #crowded = false;
   count = 0;
   step = NaN;
   #waiting: number[] = [];
@@ -43,6 +42,11 @@ export class TimeTrack {
       return;
     }
     this.#place(t, this.count++);
+  }
+
+  /** True when the steps are too uneven for a sampled series: every tenth row begins a new stretch. */
+  get uneven(): boolean {
+    return this.#crowded || this.stretches.length > Math.max(3, this.count / 10);
   }
 
   finish(): void {
@@ -72,13 +76,13 @@ export class TimeTrack {
       now.last = t;
       return;
     }
-    if (now && d < this.step)
+    if (now && d <= 0)
       throw new UserError(
         'time-goes-back',
         `${this.#rowName(row)}: time ${d < 0 ? 'goes back' : 'stands still'} (step ${d} s where ${this.step} s is usual). Sort the rows or remove the overlap.`,
       );
     if (this.stretches.length >= MOST_STRETCHES) {
-      this.uneven = true;
+      this.#crowded = true;
       now!.count++;
       now!.last = t;
       return;
