@@ -71,7 +71,8 @@ describe('mean-median-differ', () => {
     const r = await run(burst, { average: 'median', segment: 2 });
     const w = r.outcome.warnings.find((v) => v.code === 'mean-median-differ')!;
     expect(w.value).toBeGreaterThan(0.5);
-    const exclude = (w.fix as { params: { exclude: number[] } }).params.exclude;
+    if (w.fix?.kind !== 'set') throw new Error('no fix is offered');
+    const exclude = w.fix.params['exclude'] as number[];
     expect(exclude[0]).toBeLessThanOrEqual(30);
     expect(exclude[1]).toBeGreaterThanOrEqual(31);
     const fixed = await run(burst, { average: 'median', segment: 2, exclude });

@@ -93,8 +93,15 @@ describe('closed forms', () => {
   const sigma = 3e-21;
   const white = seriesOf(gaussianNoise(fs * 300, sigma, 7), fs);
 
-  test.each(['mean', 'median', 'median-mean'])('white noise has density 2σ²/rate (%s)', async (average) => {
-    const run = await runStep(noiseSpectrum, [white], { segment: 1, average });
+  test.each([
+    ['mean', 0.5],
+    ['median', 0.5],
+    ['median-mean', 0.5],
+    ['mean', 0.75],
+    ['median', 0.75],
+    ['median-mean', 0],
+  ])('white noise has density 2σ²/rate (%s, overlap %d)', async (average, overlap) => {
+    const run = await runStep(noiseSpectrum, [white], { segment: 1, average, overlap });
     const { density, estimate } = run.outcome.data;
     const inner = density.slice(3, -3).map((s) => s / ((2 * sigma ** 2) / fs));
     const mean = inner.reduce((a, b) => a + b, 0) / inner.length;
@@ -182,6 +189,17 @@ describe('closed forms', () => {
     const quiet = density.slice(Math.round(3000 / df), Math.round(4500 / df)).sort();
     const floor = Math.sqrt(quiet[quiet.length >> 1]);
     if (window === 'flat-top') expect(floor / (1e-3 / Math.sqrt(6 * fsV))).toBeCloseTo(1, 1);
+  });
+
+  test('the power of a steady line is exact in a mean and 1/ln 2 times too large in a median', async () => {
+    const x = gaussianNoise(fs * 256, 1e-24).map(
+      (v, i) => v + 1e-20 * Math.sin((2 * Math.PI * 100 * i) / fs),
+    );
+    const power = async (average: string) =>
+      (await runStep(noiseSpectrum, [seriesOf(x, fs)], { segment: 2, average })).number('parseval-ratio') **
+      2;
+    expect(await power('mean')).toBeCloseTo(1, 4);
+    expect(await power('median')).toBeCloseTo(1 / Math.LN2, 1);
   });
 
   test('resolution and spacing are apart: Hann 4 s has 0.375 Hz and 0.25 Hz', async () => {

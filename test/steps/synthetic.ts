@@ -30,7 +30,7 @@ export function gaussianNoise(n: number, sigma: number, seed = 1): Float64Array 
 }
 
 /** Runs of finite samples. */
-export function finiteSpans(samples: Float64Array): Span[] {
+function finiteSpans(samples: Float64Array): Span[] {
   const out: Span[] = [];
   let from = 0;
   for (let i = 0; i <= samples.length; i++) {

@@ -34,7 +34,7 @@ function shown(viewport: Viewport, extent: readonly [number, number]): { range?:
 }
 
 /** The part of `asked` inside `extent`; undefined when nothing was asked or nothing of it is inside. */
-export function clip(
+function clip(
   asked: readonly [number, number] | undefined,
   extent: readonly [number, number],
 ): readonly [number, number] | undefined {

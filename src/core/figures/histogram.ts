@@ -16,7 +16,7 @@ export interface HistogramInput {
 }
 
 /** Expected count per bin of a Gaussian with the same total. Below half a sample it is cut to NaN. */
-export function gaussianCounts(
+function gaussianCounts(
   edges: Float64Array,
   total: number,
   centre: number,

@@ -44,7 +44,7 @@ export function seriesFigure(series: Series, viewport: Viewport, options: Series
 }
 
 /** Samples of a series in a view, x in seconds after its start; at most two points per pixel column. */
-export function thinSeries(series: Series, columns: Columns): Thinned {
+function thinSeries(series: Series, columns: Columns): Thinned {
   const from = Math.max(0, Math.floor(columns.from * series.rate) - 1);
   const to = Math.min(series.length, Math.ceil(columns.to * series.rate) + 2);
   if (to - from > 2 * columns.width) {

@@ -86,8 +86,6 @@ export const NOISE_MODELS = [
 
 export type NoiseModelId = (typeof NOISE_MODELS)[number]['id'];
 
-export const NOISE_MODEL_IDS: readonly NoiseModelId[] = NOISE_MODELS.map((m) => m.id);
-
 /** One-sided density of a model at each frequency, in strain²/Hz; NaN below the model's range, never extrapolated. */
 export function modelDensity(model: NoiseModel, frequency: Float64Array): Float64Array {
   return frequency.map((f) => (f >= model.from ? model.density(f) : NaN));

@@ -8,6 +8,12 @@ import { amplitudeUnit, sampleUnit } from './units';
 const WELCH = 'Welch, IEEE Trans. Audio Electroacoust. AU-15, 70 (1967)';
 const REPORT = 'Heinzel, Rüdiger, Schilling, report of 15 Feb 2002';
 
+const PARSEVAL = {
+  mean: 'near 1 when scaling and window are right; smaller where the data drift more slowly than a segment',
+  median:
+    'near 1 in Gaussian noise; a median counts steady lines up to 1/√(ln 2) = 1.2 times and leaves bursts out',
+};
+
 /** The numbers of a noise-spectrum card. */
 export function spectrumNumbers(
   spectrum: Spectrum,
@@ -107,8 +113,7 @@ export function spectrumNumbers(
             label: 'Sum over rms',
             value: facts.parseval / deviation,
             unit: '',
-            convention:
-              'near 1 when scaling and window are right; drifts slower than a segment and bursts make it smaller',
+            convention: PARSEVAL[estimate.average === 'mean' ? 'mean' : 'median'],
           },
         ]
       : []),
