@@ -109,7 +109,12 @@ describe('NumPy array', () => {
     ['a record', npy('XX', [16], new Uint8Array(256)), /elements of type XX/],
     [
       'a bad shape',
-      Buffer.from(npy('<f8', [40], f64(ramp)).toString('latin1').replace('(40,)', '(4x,)'), 'latin1'),
+      Buffer.from(
+        Buffer.from(npy('<f8', [40], f64(ramp)))
+          .toString('latin1')
+          .replace('(40,)', '(4x,)'),
+        'latin1',
+      ),
       /its shape/,
     ],
   ])('refuses %s in one sentence', (_, bytes, message) => {
