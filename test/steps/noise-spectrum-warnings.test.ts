@@ -94,6 +94,19 @@ describe('mean-median-differ', () => {
       expect(r.codes, `seed ${seed}`).not.toContain('mean-median-differ');
     }
   });
+
+  test('a high-Q resonance driven by noise, whose own power wanders, is not taken for it', async () => {
+    // y[n] = 2 r cos(θ) y[n−1] − r² y[n−2] + drive: 150 Hz, width 0.05 Hz, far above everything else of its octave.
+    const r = Math.exp((-Math.PI * 0.05) / fs);
+    const c = 2 * r * Math.cos((2 * Math.PI * 150) / fs);
+    const drive = noise(128, 1, 21);
+    let [y1, y2] = [0, 0];
+    const x = noise(128, 1, 22).map((v, i) => {
+      [y1, y2] = [c * y1 - r * r * y2 + drive[i], y1];
+      return v + y1;
+    });
+    expect((await run(x)).codes).not.toContain('mean-median-differ');
+  });
 });
 
 describe('data-left-out', () => {

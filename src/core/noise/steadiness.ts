@@ -1,8 +1,9 @@
 import { median } from './spectrum-facts';
 
 const OCTAVES = 7;
-/** Fewest bins of an octave that is watched. */
+/** Fewest and most bins of an octave that are watched. */
 const FEWEST = 16;
+const MOST = 128;
 /** Fewest segments whose mean and median are compared. */
 const SEGMENTS = 8;
 /** Difference that is always tolerated, and the number of standard deviations of chance added to it. */
@@ -21,40 +22,63 @@ export interface Loudest {
   readonly overMedian: number;
 }
 
-/** Octaves downward from the Nyquist frequency as bins `[from, to)`, at most seven, none with fewer than 16 bins. */
-export function watchedOctaves(bins: number): [number, number][] {
-  const out: [number, number][] = [];
-  for (let to = bins - 1, k = 0; k < OCTAVES && to / 2 >= FEWEST; k++, to = Math.floor(to / 2))
-    out.push([Math.ceil(to / 2), to]);
+/** Bins watched for one octave. */
+export interface WatchedOctave {
+  /** Bins, spread evenly and at least `binWidth` apart, so that chance hits each on its own. */
+  readonly bins: readonly number[];
+}
+
+/**
+ * Octaves downward from the Nyquist frequency, at most seven, none with fewer than 16 bins to watch.
+ *
+ * @param binWidth noise bandwidth of the window in bins
+ */
+export function watchedOctaves(bins: number, binWidth: number): WatchedOctave[] {
+  const out: WatchedOctave[] = [];
+  for (let to = bins - 1, k = 0; k < OCTAVES; k++, to = Math.floor(to / 2)) {
+    const from = Math.ceil(to / 2);
+    const count = Math.min(MOST, Math.floor((to - from) / Math.ceil(binWidth)));
+    if (count < FEWEST) break;
+    out.push({
+      bins: Array.from({ length: count }, (_, i) => from + Math.floor(((i + 0.5) * (to - from)) / count)),
+    });
+  }
   return out;
 }
 
 /**
- * Compares mean and median of the segments' power in each octave. In steady Gaussian noise the two agree: the power of
- * M bins is a gamma variable whose median is below its mean by about 1/(3M), and the difference of sample mean and sample
- * median of K of them scatters by √((π/2 − 1)/(K M)).
- *
- * @param binWidth noise bandwidth of the window in bins, which makes neighbouring bins depend on each other
+ * Geometric mean of a segment's power over watched bins, in arbitrary unit. Unlike the sum, it gives a strong line,
+ * whose power scatters from segment to segment by itself, no more weight than any other bin.
+ */
+export function octaveLevel(re: Float64Array, im: Float64Array, { bins }: WatchedOctave): number {
+  let sum = 0;
+  for (const k of bins) sum += Math.log(re[k] * re[k] + im[k] * im[k] + Number.MIN_VALUE);
+  return Math.exp(sum / bins.length);
+}
+
+/**
+ * Compares mean and median of the segments' levels in each octave. In steady Gaussian noise the logarithm of one bin's
+ * power has variance π²/6, so that of the level σ² = π²/(6 M) for M bins; mean and median of the levels then differ by
+ * about σ²/2, and that difference scatters by σ √((π/2 − 1)/K) over K segments.
  */
 export function loudestOctave(
-  octaves: readonly (readonly [number, number])[],
+  octaves: readonly WatchedOctave[],
   watched: readonly Float64Array[],
   df: number,
-  binWidth: number,
 ): Loudest | undefined {
-  const found = octaves.flatMap(([from, to], b): Loudest[] => {
+  const found = octaves.flatMap(({ bins }, b): Loudest[] => {
     const powers = watched[b];
     const typical = median(powers);
     if (powers.length < SEGMENTS || !(typical > 0)) return [];
-    const free = (to - from) / binWidth;
+    const variance = Math.PI ** 2 / (6 * bins.length);
     const meanOverMedian = powers.reduce((s, p) => s + p, 0) / powers.length / typical;
-    const chance = Math.sqrt((Math.PI / 2 - 1) / (powers.length * free));
+    const chance = Math.sqrt(((Math.PI / 2 - 1) * variance) / powers.length);
     const segment = powers.reduce((best, p, k) => (p > powers[best] ? k : best), 0);
     return [
       {
-        band: [from * df, to * df],
+        band: [bins[0] * df, bins.at(-1)! * df],
         meanOverMedian,
-        limit: 1 + TOLERATED + 1 / (3 * free) + SIGMAS * chance,
+        limit: 1 + TOLERATED + variance / 2 + SIGMAS * chance,
         segment,
         overMedian: powers[segment] / typical,
       },

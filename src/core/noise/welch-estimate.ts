@@ -3,6 +3,7 @@ import { spanLength } from '../data/spans';
 import type { Kernels } from '../kernels/kernels';
 import { RunningMoments } from '../look/running-moments';
 import type { SegmentPlan } from './segments';
+import { octaveLevel, type WatchedOctave } from './steadiness';
 
 /** Samples read at a time, at least; a block holds several segments. */
 const BLOCK = 1 << 18;
@@ -11,8 +12,8 @@ export interface WelchRequest {
   readonly average: AverageKind;
   readonly window: Float64Array;
   readonly detrend: 'constant' | 'none';
-  /** Bands of bins `[from, to)` whose summed power is kept for every segment. */
-  readonly watch: readonly (readonly [from: number, to: number])[];
+  /** Octaves whose level is kept for every segment. */
+  readonly watch: readonly WatchedOctave[];
   /** Bytes for work arrays. */
   readonly memoryLimit: number;
   /** Called once per block with the fraction done. */
@@ -22,7 +23,7 @@ export interface WelchRequest {
 export interface WelchEstimate {
   /** One-sided density in squared sample unit per Hz; floor(size / 2) + 1 bins. */
   readonly density: Float64Array;
-  /** Power of each segment in each watched band, in arbitrary unit. */
+  /** Level of each segment in each watched octave, in arbitrary unit. */
   readonly watched: readonly Float64Array[];
   readonly passes: number;
   /** Moments of the samples that entered, each counted once. */
@@ -59,7 +60,6 @@ export async function welchEstimate(
     memoryLimit: request.memoryLimit,
   });
   const watched = watch.map(() => new Float64Array(segments));
-  const bands = watch.map(([from, to]) => transform.spectrum.sub(from, to));
   const moments = new RunningMoments();
   let float32 = true;
   const { passes } = welch;
@@ -90,7 +90,11 @@ export async function welchEstimate(
           for (; next + size <= filled; next += step) {
             transform.load(buffer, next - at);
             welch.addLoaded();
-            if (pass === 0) watched.forEach((w, b) => (w[segment] = kernels.energy(bands[b]).sum));
+            if (pass === 0) {
+              const re = transform.spectrum.re.view();
+              const im = transform.spectrum.im.view();
+              watched.forEach((w, b) => (w[segment] = octaveLevel(re, im, watch[b])));
+            }
             segment++;
           }
         }

@@ -52,7 +52,8 @@ export default defineStep({
     const frequency = Float64Array.from({ length: Math.floor(plan.size / 2) + 1 }, (_, k) => k * df);
     const band = floorBand(series.rate, params.low, params.high);
     checkBand(band, frequency);
-    const octaves = watchedOctaves(frequency.length);
+    const { enbw } = windowFigures(window);
+    const octaves = watchedOctaves(frequency.length, enbw);
     const estimate = await welchEstimate(series, plan, context.kernels, {
       average: params.average,
       window,
@@ -61,7 +62,6 @@ export default defineStep({
       memoryLimit: context.memoryLimit,
       block: (fraction, note) => context.block(fraction, note),
     });
-    const { enbw } = windowFigures(window);
     const error = binError(params.average, plan.starts.length, window, plan.step);
     const facts0: SpectrumEstimate = {
       average: params.average,
@@ -101,7 +101,7 @@ export default defineStep({
         segmentSeconds: facts0.segmentSeconds,
         exclude: params.exclude,
         detrended,
-        loudest: loudestOctave(octaves, estimate.watched, df, enbw),
+        loudest: loudestOctave(octaves, estimate.watched, df),
         leaked: leakedShare(context.kernels, window, estimate.density, facts.bins),
       }),
     };
