@@ -10,7 +10,9 @@ const check = process.argv.includes('--check');
 const stale = [];
 
 async function put(path, text) {
-  const formatted = /\.(ts|md)$/.test(path) ? await prettier.format(text, { filepath: path, singleQuote: true, printWidth: 110 }) : text;
+  const formatted = /\.(ts|md)$/.test(path)
+    ? await prettier.format(text, { filepath: path, singleQuote: true, printWidth: 110 })
+    : text;
   const old = existsSync(path) ? readFileSync(path, 'utf8') : '';
   if (old === formatted) return;
   if (check) stale.push(path);
@@ -43,28 +45,56 @@ ${ids.map((id) => `  '${id}': ${camel(id)} as unknown as AnyStep,`).join('\n')}
 const work = 'node_modules/.cache/fringeside-sync';
 mkdirSync(work, { recursive: true });
 const bundle = join(work, `steps-${process.pid}.mjs`);
-await build({ entryPoints: [`${folder}/index.ts`], bundle: true, format: 'esm', platform: 'node', outfile: bundle, logLevel: 'error' });
+await build({
+  entryPoints: [`${folder}/index.ts`],
+  bundle: true,
+  format: 'esm',
+  platform: 'node',
+  outfile: bundle,
+  logLevel: 'error',
+});
 const { steps } = await import(pathToFileURL(bundle).href);
 rmSync(bundle);
 const all = Object.values(steps);
 
 const schemaOf = (p) => {
   const description = `${p.label}. ${p.help}${p.unit ? ` Unit: ${p.unit}.` : ''}`;
-  const bounds = { ...(p.min === undefined ? {} : p.exclusiveMin ? { exclusiveMinimum: p.min } : { minimum: p.min }), ...(p.max === undefined ? {} : { maximum: p.max }) };
+  const bounds = {
+    ...(p.min === undefined ? {} : p.exclusiveMin ? { exclusiveMinimum: p.min } : { minimum: p.min }),
+    ...(p.max === undefined ? {} : { maximum: p.max }),
+  };
   switch (p.kind) {
     case 'number': {
       const type = p.integer ? 'integer' : 'number';
       return { type: p.default === null ? [type, 'null'] : type, default: p.default, ...bounds, description };
     }
-    case 'choice': return { enum: p.choices, default: p.default, description };
-    case 'flag': return { type: 'boolean', default: p.default, description };
-    case 'time': return { type: ['string', 'number', 'null'], description };
-    case 'list': return { type: 'array', items: { anyOf: [{ type: 'number', ...bounds }, { type: 'array', items: { type: 'number', ...bounds } }] }, description };
-    default: return { type: 'string', default: p.default, description };
+    case 'choice':
+      return { enum: p.choices, default: p.default, description };
+    case 'flag':
+      return { type: 'boolean', default: p.default, description };
+    case 'time':
+      return { type: ['string', 'number', 'null'], description };
+    case 'list':
+      return {
+        type: 'array',
+        items: {
+          anyOf: [
+            { type: 'number', ...bounds },
+            { type: 'array', items: { type: 'number', ...bounds } },
+          ],
+        },
+        description,
+      };
+    default:
+      return { type: 'string', default: p.default, description };
   }
 };
 const common = {
-  id: { type: 'string', pattern: '^[A-Za-z][A-Za-z0-9_-]*$', description: 'Name of the step, used in "of" and "expect".' },
+  id: {
+    type: 'string',
+    pattern: '^[A-Za-z][A-Za-z0-9_-]*$',
+    description: 'Name of the step, used in "of" and "expect".',
+  },
   of: { type: 'array', items: { type: 'string' }, description: 'Inputs and earlier steps it consumes.' },
   off: { type: 'boolean', description: 'Keep the step in the document but do not run it.' },
 };
@@ -91,11 +121,21 @@ await put(
             additionalProperties: false,
             properties: {
               file: { type: 'string', description: 'Data file, relative to the recipe.' },
-              channel: { type: 'string', description: 'Dataset, column or track; may be left out when the file has one.' },
+              channel: {
+                type: 'string',
+                description: 'Dataset, column or track; may be left out when the file has one.',
+              },
               start: time,
               duration: { type: 'number', exclusiveMinimum: 0, description: 'Seconds from start.' },
-              rate: { type: 'number', exclusiveMinimum: 0, description: 'Sample rate in Hz, when the file does not say it.' },
-              epoch: { ...time, description: 'GPS time of the first sample of the channel, when the file does not say it.' },
+              rate: {
+                type: 'number',
+                exclusiveMinimum: 0,
+                description: 'Sample rate in Hz, when the file does not say it.',
+              },
+              epoch: {
+                ...time,
+                description: 'GPS time of the first sample of the channel, when the file does not say it.',
+              },
               unit: { type: 'string' },
               scale: { type: 'number', description: 'Factor on every sample.' },
             },
@@ -112,7 +152,13 @@ await put(
               then: {
                 additionalProperties: false,
                 description: s.summary,
-                properties: { id: true, do: true, of: true, off: true, ...Object.fromEntries(Object.entries(s.params).map(([k, p]) => [k, schemaOf(p)])) },
+                properties: {
+                  id: true,
+                  do: true,
+                  of: true,
+                  off: true,
+                  ...Object.fromEntries(Object.entries(s.params).map(([k, p]) => [k, schemaOf(p)])),
+                },
               },
             })),
           },
@@ -123,7 +169,11 @@ await put(
             type: 'object',
             required: ['value'],
             additionalProperties: false,
-            properties: { value: { type: 'number' }, rel: { type: 'number', minimum: 0 }, abs: { type: 'number', minimum: 0 } },
+            properties: {
+              value: { type: 'number' },
+              rel: { type: 'number', minimum: 0 },
+              abs: { type: 'number', minimum: 0 },
+            },
           },
         },
       },
@@ -134,11 +184,20 @@ await put(
 );
 
 const bounds = (p) =>
-  [p.min !== undefined && `${p.exclusiveMin ? '>' : '≥'} ${p.min}`, p.max !== undefined && `≤ ${p.max}`, p.choices?.join(' · ')].filter(Boolean).join(', ');
+  [
+    p.min !== undefined && `${p.exclusiveMin ? '>' : '≥'} ${p.min}`,
+    p.max !== undefined && `≤ ${p.max}`,
+    p.choices?.join(' · '),
+  ]
+    .filter(Boolean)
+    .join(', ');
 const cellText = (s) => String(s).replaceAll('|', '\\|');
 const reference = all
   .map((s) => {
-    const rows = Object.entries(s.params).map(([k, p]) => `| \`${k}\` | ${p.unit ?? ''} | \`${JSON.stringify(p.default)}\` | ${cellText(bounds(p))} | ${cellText(`${p.label}. ${p.help}`)} |`);
+    const rows = Object.entries(s.params).map(
+      ([k, p]) =>
+        `| \`${k}\` | ${p.unit ?? ''} | \`${JSON.stringify(p.default)}\` | ${cellText(bounds(p))} | ${cellText(`${p.label}. ${p.help}`)} |`,
+    );
     return `## ${s.id}
 
 ${s.title} (version ${s.version}). ${s.summary}
@@ -152,7 +211,10 @@ Sources: ${s.sources.map((x) => `${x.text} [${x.flag}]`).join('; ') || 'none'}.
   })
   .join('\n');
 mkdirSync('docs', { recursive: true });
-await put('docs/steps.md', `<!-- Written by \`npm run sync\` from src/core/steps. -->\n\n# Steps\n\nThe mark behind a source says how it entered: read in the source, from memory, computed here, or common practice with no source.\n\n${reference}`);
+await put(
+  'docs/steps.md',
+  `<!-- Written by \`npm run sync\` from src/core/steps. -->\n\n# Steps\n\nThe mark behind a source says how it entered: read in the source, from memory, computed here, or common practice with no source.\n\n${reference}`,
+);
 
 // Palette: one command per step, so that each is found by name.
 const manifest = JSON.parse(readFileSync('package.json', 'utf8'));
@@ -161,9 +223,17 @@ if (manifest.contributes?.commands) {
   const own = manifest.contributes.commands.filter((c) => !c.command.startsWith(prefix));
   manifest.contributes.commands = [
     ...own,
-    ...all.map((s) => ({ command: `${prefix}${s.id}`, title: `Add Step: ${s.title}`, category: 'Fringeside', enablement: 'fringeside.lookActive' })),
+    ...all.map((s) => ({
+      command: `${prefix}${s.id}`,
+      title: `Add Step: ${s.title}`,
+      category: 'Fringeside',
+      enablement: 'fringeside.lookActive',
+    })),
   ];
-  await put('package.json', await prettier.format(JSON.stringify(manifest), { parser: 'json-stringify', printWidth: 110 }));
+  await put(
+    'package.json',
+    await prettier.format(JSON.stringify(manifest), { parser: 'json-stringify', printWidth: 110 }),
+  );
 }
 
 if (stale.length > 0) {

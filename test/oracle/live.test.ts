@@ -24,5 +24,10 @@ function compare(a: unknown, b: unknown, at: string): void {
 
 describe('committed oracle numbers equal what NumPy and SciPy give now', () => {
   if ('absent' in found) test.skip(`live comparison not run: ${found.absent}`, () => undefined);
-  else test.each(topics)('%s', (topic) => compare(oracle(topic), regenerate(found.python, topic), topic), 120_000);
+  else
+    test.each(topics)(
+      '%s',
+      (topic) => compare(oracle(topic), regenerate(found.python, topic), topic),
+      120_000,
+    );
 });

@@ -11,7 +11,9 @@ export function oracle<T>(topic: string): T {
 /** The interpreter that has SciPy, or the reason why the live comparison cannot run. */
 export function scipyPython(): { python: string } | { absent: string } {
   const python = process.env['FRINGESIDE_PYTHON'] ?? 'python3';
-  const probe = spawnSync(python, ['-c', 'import scipy, numpy; print(scipy.__version__)'], { encoding: 'utf8' });
+  const probe = spawnSync(python, ['-c', 'import scipy, numpy; print(scipy.__version__)'], {
+    encoding: 'utf8',
+  });
   return probe.status === 0 ? { python } : { absent: `${python} has no SciPy` };
 }
 
