@@ -45,7 +45,7 @@ function textFile(name: string, text: string): Planned {
 }
 
 /** The data of all sites, in the order of `DEMO_SITES`: 16 MB, about two seconds of work. */
-export function demoData(): SiteData[] {
+function demoData(): SiteData[] {
   return DEMO_SITES.map(synthesise);
 }
 

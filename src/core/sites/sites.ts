@@ -4,7 +4,7 @@ import { hint, nearestNames } from '../data/nearest';
 import type { Geodetic } from './wgs84';
 
 /** Degrees: azimuth clockwise from north, tilt above the horizontal. */
-export interface Arm {
+interface Arm {
   readonly azimuth: number;
   readonly tilt: number;
 }
