@@ -4,7 +4,6 @@ import type { Figure, Viewport } from '../../src/core/figures/figure';
 import type { CardError } from '../../src/core/protocol/engine';
 import type { ChannelAnswers, FromDataPage, ToDataPage } from '../../src/core/protocol/panel';
 import { FigureBox, plotWidth } from '../figure/figure-box';
-import type { View } from '../figure/ranges';
 import type { Views } from '../figure/views';
 import type { Host } from '../page/host';
 import { RateForm } from '../page/rate-form';
@@ -22,7 +21,7 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
   const [answers, setAnswers] = useState<ChannelAnswers>({});
   const [asText, setAsText] = useState(false);
   const key = `preview/${channel.name}`;
-  const { figure, error, fraction, ask } = usePreview(host, channel, answers.rate, views.of(key));
+  const { whole, part, error, fraction, version, ask } = usePreview(host, channel, answers.rate);
   const [, again] = useState(0);
   useEffect(() => views.onChange(() => again((n) => n + 1)), [views]);
   const needsRate = channel.rate === undefined && answers.rate === undefined;
@@ -69,7 +68,14 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
             The file does not say how fast <b>{channel.name}</b> was sampled. Your answer is used for the
             preview and written into the recipe; the file is not changed.
           </p>
-          <RateForm button={needsRate ? 'Use this rate' : 'Change'} onAnswer={setAnswers} />
+          <RateForm
+            button={needsRate ? 'Use this rate' : 'Change'}
+            onAnswer={(said) => {
+              // The axis changes from samples to seconds, so what was zoomed to no longer means the same.
+              views.set(key, {});
+              setAnswers(said);
+            }}
+          />
         </div>
       )}
       {error && (
@@ -77,12 +83,13 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
           <p>{error.message}</p>
         </div>
       )}
-      {figure && (
+      {whole && (
         <FigureBox
-          figure={figure}
+          figure={whole}
+          redrawn={part}
           viewKey={key}
           views={views}
-          result={String(answers.rate ?? '')}
+          result={String(version)}
           onViewport={ask}
           onCopy={(text, what) => host.post({ type: 'copy', text, what })}
           onLeave={() => undefined}
@@ -90,7 +97,7 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
           onAsText={setAsText}
         />
       )}
-      {!figure && !error && (
+      {!whole && !error && (
         <div class="plot-frame placeholder">
           <progress max={1} value={fraction} aria-label="Reading the channel" />
         </div>
@@ -100,50 +107,51 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
 }
 
 interface Preview {
-  readonly figure: Figure | undefined;
+  /** The whole channel, and the part last zoomed to. */
+  readonly whole: Figure | undefined;
+  readonly part: Figure | undefined;
   readonly error: CardError | undefined;
   readonly fraction: number;
+  /** Changes with every new picture of the whole. */
+  readonly version: number;
   readonly ask: (viewport: Viewport) => void;
 }
 
 let nextRequest = 1;
 
-/** Asks for the preview and takes the newest answer alone. */
-function usePreview(
-  host: Props['host'],
-  channel: ChannelFacts,
-  rate: number | undefined,
-  view: View,
-): Preview {
-  const [figure, setFigure] = useState<Figure>();
+/** Asks for the preview and takes the newest answer alone, for the whole and for a part of it. */
+function usePreview(host: Props['host'], channel: ChannelFacts, rate: number | undefined): Preview {
+  const [whole, setWhole] = useState<Figure>();
+  const [part, setPart] = useState<Figure>();
+  const [version, setVersion] = useState(0);
   const [error, setError] = useState<CardError>();
   const [fraction, setFraction] = useState(0);
-  const last = useRef(0);
+  const last = useRef({ whole: 0, part: 0 });
   const ask = (viewport: Viewport): void => {
-    last.current = nextRequest++;
-    host.post({
-      type: 'preview',
-      request: last.current,
-      channel: channel.name,
-      viewport,
-      ...(rate === undefined ? {} : { rate }),
-    });
+    const request = nextRequest++;
+    last.current[viewport.x ? 'part' : 'whole'] = request;
+    const said = rate === undefined ? {} : { rate };
+    host.post({ type: 'preview', request, channel: channel.name, viewport, ...said });
   };
   useEffect(() => {
     const listener = (e: Event): void => {
       const m = (e as CustomEvent<Exclude<ToDataPage, { type: 'data' }>>).detail;
-      if (m.request !== last.current) return;
+      const isWhole = m.request === last.current.whole;
+      if (!isWhole && m.request !== last.current.part) return;
       if (m.type === 'preview-progress') setFraction(m.fraction);
-      else if (m.type === 'preview') {
-        setFigure(m.figure);
+      else if (m.type === 'preview-failed') setError(m.error);
+      else {
         setError(undefined);
-      } else setError(m.error);
+        if (isWhole) {
+          setWhole(m.figure);
+          setPart(undefined);
+          setVersion((v) => v + 1);
+        } else setPart(m.figure);
+      }
     };
     window.addEventListener('preview', listener);
     return () => window.removeEventListener('preview', listener);
   }, []);
-  useEffect(() => {
-    ask({ width: plotWidth(), ...(view.x ? { x: view.x } : {}) });
-  }, [channel, rate]);
-  return { figure, error, fraction, ask };
+  useEffect(() => ask({ width: plotWidth() }), [channel, rate]);
+  return { whole, part, error, fraction, version, ask };
 }

@@ -56,7 +56,7 @@ export function Tree({ description, chosen, onChoose }: Props): JSX.Element {
         </span>
       )}
       {n.attributes.length > 0 && (
-        <details class="attributes" open={n.attributes.length <= 8}>
+        <details class="attributes" open={n.channel !== undefined && n.channel === chosen}>
           <summary>
             {n.attributes.length} {n.attributes.length === 1 ? 'attribute' : 'attributes'}
           </summary>

@@ -12,10 +12,13 @@ import { PLOT_MARGIN } from './to-plotly';
 import type { Views } from './views';
 
 interface Props {
+  /** The whole figure. */
   readonly figure: Figure;
+  /** The figure thinned to a zoomed view, if one was asked for and has come. */
+  readonly redrawn: Figure | undefined;
   readonly viewKey: string;
   readonly views: Views;
-  /** Asks for the figure thinned to another view; the answer comes as another `figure`. */
+  /** Asks for the figure thinned to another view; the answer comes as `redrawn`. */
   readonly onViewport: (viewport: Viewport) => void;
   readonly onCopy: (text: string, what: string) => void;
   readonly onLeave: () => void;
@@ -30,15 +33,16 @@ const REDRAW_MS = 120;
 
 /** A figure with its legend, buttons, caption, and its table when shown as text; both fill the same reserved place. */
 export function FigureBox(p: Props): JSX.Element {
-  const { figure, viewKey, views, asText } = p;
+  const { viewKey, views, asText } = p;
   const [readout, setReadout] = useState<Readout>();
   const [, again] = useState(0);
   const [theme, setTheme] = useState(() => readTheme().kind);
   const caption = useId();
   useEffect(() => views.onChange(() => again((n) => n + 1)), [views]);
   useEffect(() => onThemeChange(() => setTheme(readTheme().kind)), []);
-  useEffect(() => views.register(viewKey, figure), [views, viewKey, figure]);
+  useEffect(() => views.register(viewKey, p.figure), [views, viewKey, p.figure]);
   const view = views.of(viewKey);
+  const figure = view.x && p.redrawn ? p.redrawn : p.figure;
   const [from, to] = view.x ?? [];
 
   useEffect(() => {

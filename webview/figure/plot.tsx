@@ -45,7 +45,7 @@ export function Plot({ figure, view, onView, onRead, describedBy, onLeave }: Pro
     figureLibrary()
       .then(async (library) => {
         if (dropped) return;
-        const { data, layout } = toPlotly(figure, view, theme, 'x');
+        const { data, layout } = toPlotly(figure, view, theme, { titles: 'x', width });
         const size = { width, height: element.clientHeight };
         const plot = await library.react(element, data, { ...layout, ...size, autosize: false }, PLOT_CONFIG);
         if (!wired.current) wire(plot);

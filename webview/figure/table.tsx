@@ -38,7 +38,7 @@ export function DataTable({ table, onCopy, first = 12 }: Props): JSX.Element {
               {table.columns.map((c) => (
                 <th key={c.id} scope="col">
                   {c.label}
-                  {c.unit !== '' && <span class="unit"> / {c.unit}</span>}
+                  {c.unit !== '' && <span class="unit"> [{c.unit}]</span>}
                 </th>
               ))}
             </tr>

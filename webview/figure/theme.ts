@@ -6,6 +6,7 @@ export interface Theme {
   readonly text: string;
   readonly muted: string;
   readonly grid: string;
+  readonly ground: string;
   readonly font: string;
   readonly fontSize: number;
 }
@@ -27,6 +28,7 @@ export function readTheme(body: HTMLElement = document.body): Theme {
     text: rgba(text, 1),
     muted: rgba(resolved(body, '--vscode-descriptionForeground'), 1),
     grid: rgba(text, kind.startsWith('contrast') ? 0.3 : 0.12),
+    ground: rgba(resolved(body, '--vscode-editor-background'), 1),
     font: style.fontFamily,
     fontSize: Math.max(11, parseFloat(style.fontSize) - 2),
   };

@@ -9,6 +9,7 @@ export const PLOT_CONFIG = {
   displayModeBar: false,
   responsive: false,
   doubleClick: false,
+  showTips: false,
   scrollZoom: false,
 } as const;
 
@@ -23,9 +24,9 @@ export function toPlotly(
   figure: Figure,
   view: View,
   theme: Theme,
-  titles: 'both' | 'x' = 'both',
+  { titles = 'both', width = 900 }: { readonly titles?: 'both' | 'x'; readonly width?: number } = {},
 ): { data: PlotlyTrace[]; layout: PlotlyLayout } {
-  const layout = layoutOf(figure, view, theme, titles === 'both');
+  const layout = layoutOf(figure, view, theme, titles === 'both', width);
   return { data: figure.traces.flatMap((t) => traceOf(t, theme)), layout };
 }
 
@@ -111,21 +112,32 @@ export function outline(
   return { x: outX, y: outY };
 }
 
-function layoutOf(figure: Figure, view: View, theme: Theme, valueTitle: boolean): PlotlyLayout {
+function layoutOf(
+  figure: Figure,
+  view: View,
+  theme: Theme,
+  valueTitle: boolean,
+  width: number,
+): PlotlyLayout {
   const x = view.x ?? figure.x.extent;
   const y = view.y ?? valueRange(figure, x);
   return {
     autosize: true,
     margin: { ...PLOT_MARGIN, pad: 0 },
-    paper_bgcolor: 'transparent',
-    plot_bgcolor: 'transparent',
+    paper_bgcolor: theme.ground,
+    plot_bgcolor: theme.ground,
     font: { family: theme.font, size: theme.fontSize, color: theme.text },
+    separators: '.\u202f',
     showlegend: false,
     hovermode: 'x',
     dragmode: 'zoom',
     bargap: 0,
-    xaxis: axisOf(figure.x, inPlace(x, figure.x), theme, true),
-    yaxis: axisOf(figure.y, inPlace(y, figure.y), theme, valueTitle),
+    // Labels with a power of ten are wide; too many would turn or run together.
+    xaxis: {
+      ...axisOf(figure.x, inPlace(x, figure.x), theme, true),
+      nticks: Math.max(3, Math.floor(width / 100)),
+    },
+    yaxis: { ...axisOf(figure.y, inPlace(y, figure.y), theme, valueTitle), showspikes: false },
     shapes: figure.marks.map((m) => shapeOf(m, theme)),
   };
 }
@@ -147,7 +159,7 @@ function axisOf(axis: Axis, range: Range, theme: Theme, titled: boolean): Record
     exponentformat: 'power',
     minexponent: 4,
     separatethousands: false,
-    showspikes: axis.link !== undefined || axis.scale === 'linear',
+    showspikes: true,
     spikemode: 'across',
     spikethickness: 1,
     spikecolor: theme.muted,

@@ -27,7 +27,7 @@ export function CardMenu({ view, index, count }: Props): JSX.Element {
     <span class="card-menu">
       {fold('params', 'Parameters')}
       {fold('details', 'Details')}
-      <details class="more">
+      <details class="more" onFocusOut={closeWhenLeft} onClick={closeAfterChoice} onKeyDown={closeOnEscape}>
         <summary aria-label={`More for ${id}`}>More</summary>
         <div class="more-list">
           <button
@@ -71,4 +71,21 @@ export function CardMenu({ view, index, count }: Props): JSX.Element {
       </details>
     </span>
   );
+}
+
+/** The list closes when something in it was chosen, when the focus leaves it, and on Escape. */
+function closeAfterChoice(e: JSX.TargetedMouseEvent<HTMLDetailsElement>): void {
+  if (e.target instanceof Element && e.target.closest('button')) e.currentTarget.open = false;
+}
+
+function closeWhenLeft(e: JSX.TargetedFocusEvent<HTMLDetailsElement>): void {
+  if (!(e.relatedTarget instanceof Node && e.currentTarget.contains(e.relatedTarget)))
+    e.currentTarget.open = false;
+}
+
+function closeOnEscape(e: JSX.TargetedKeyboardEvent<HTMLDetailsElement>): void {
+  if (e.key !== 'Escape' || !e.currentTarget.open) return;
+  e.stopPropagation();
+  e.currentTarget.open = false;
+  e.currentTarget.querySelector('summary')?.focus();
 }

@@ -26,9 +26,10 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
   const { isOpen, setOpen, post, copy, views, requests } = useLook();
   const { id, card, state } = view;
   const collapsed = isOpen('collapsed', id);
-  const error = view.failure ?? card?.error;
+  const isShown = state !== 'off' && card !== undefined && card.state === 'done';
+  const error = state === 'failed' || state === 'blocked' ? (view.failure ?? card?.error) : undefined;
   const result = card?.provenance?.fingerprint ?? '';
-  const pending = !card && (state === 'waiting' || state === 'running');
+  const pending = !isShown && (state === 'waiting' || state === 'running');
   const toCard = (): void => document.querySelector<HTMLElement>(`[data-card="${CSS.escape(id)}"]`)?.focus();
   return (
     <section
@@ -74,8 +75,12 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
         <>
           {isOpen('params', id) && <ParamForm view={view} />}
           {error && <Failure error={error} state={state} />}
-          {card && (
-            <div class="card-body" data-faded={state !== 'done' && state !== 'failed' && state !== 'blocked'}>
+          {isShown && (
+            <div
+              class="card-body"
+              data-numbers={card.numbers.length > 2 + 8 * card.figures.length ? 'below' : 'beside'}
+              data-faded={state !== 'done'}
+            >
               {card.sentence !== '' && <p class="sentence">{card.sentence}</p>}
               <Warnings warnings={card.warnings} step={id} />
               <div class="card-main">
@@ -84,7 +89,8 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
                   return (
                     <FigureBox
                       key={f.id}
-                      figure={redrawn.get(key) ?? f}
+                      figure={f}
+                      redrawn={redrawn.get(key)}
                       viewKey={key}
                       views={views}
                       result={result}

@@ -7,9 +7,11 @@ import { numberText, secondsText } from '../words/numbers';
 import { useLook } from './context';
 
 const LINK_WORDS: Readonly<Record<LinkGroup, string>> = {
-  time: 'Time axes move together',
-  frequency: 'Frequency axes move together',
+  time: 'link time axes',
+  frequency: 'link frequency axes',
 };
+
+const RUN_WORDS = { running: 'running', broken: 'broke off', held: 'not run' } as const;
 
 /** Title, run state, and the inputs with where their numbers come from. */
 export function LookHeader({ look }: { readonly look: LookState }): JSX.Element {
@@ -25,9 +27,20 @@ export function LookHeader({ look }: { readonly look: LookState }): JSX.Element 
         {look.title !== undefined && <span class="muted">{look.name}</span>}
         {look.unsaved && <span class="tag">not saved</span>}
         <span class="push" />
+        {LINK_GROUPS.filter((g) => views.count(g) > 1).map((g) => (
+          <label key={g} class="link">
+            <input
+              type="checkbox"
+              data-link={g}
+              checked={views.isLinked(g)}
+              onChange={(e) => views.setLinked(g, e.currentTarget.checked)}
+            />
+            {LINK_WORDS[g]}
+          </label>
+        ))}
         <span class="run-state" data-run={look.run.state}>
-          {running ? 'running' : look.run.state === 'idle' ? '' : look.run.state} {done} of{' '}
-          {look.cards.length} steps done
+          {look.run.state === 'idle' ? '' : `${RUN_WORDS[look.run.state]}, `}
+          {done} of {look.cards.length} steps done
         </span>
         {running ? (
           <button type="button" data-action="cancel" onClick={() => post({ type: 'cancel' })}>
@@ -47,19 +60,6 @@ export function LookHeader({ look }: { readonly look: LookState }): JSX.Element 
       <div class="inputs">
         {look.inputs.map((i) => (
           <Input key={i.name} input={i} />
-        ))}
-      </div>
-      <div class="links">
-        {LINK_GROUPS.filter((g) => views.count(g) > 1).map((g) => (
-          <label key={g}>
-            <input
-              type="checkbox"
-              data-link={g}
-              checked={views.isLinked(g)}
-              onChange={(e) => views.setLinked(g, e.currentTarget.checked)}
-            />
-            {LINK_WORDS[g]}
-          </label>
         ))}
       </div>
     </header>
@@ -108,7 +108,7 @@ function Input({ input }: { readonly input: InputView }): JSX.Element {
             <dd title={`rate: ${facts.rateFrom}`}>
               {numberText(facts.samples)} at {numberText(facts.rate, 9)} Hz
               {facts.notFinite > 0 && `, ${numberText(facts.notFinite)} not finite`}
-              {facts.gaps.length > 0 && `, ${facts.gaps.length} gaps`}
+              {facts.gaps.length > 0 && `, ${facts.gaps.length} ${facts.gaps.length === 1 ? 'gap' : 'gaps'}`}
             </dd>
           </div>
           <div>

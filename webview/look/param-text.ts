@@ -34,7 +34,7 @@ export function fieldText(param: ParamSpec, value: unknown): string {
 
 /** Default as words, or nothing when there is none to speak of. */
 export function defaultWords(param: ParamSpec): string {
-  if (param.default === null) return 'chosen by the step';
+  if (param.default === null) return 'automatic';
   const text = fieldText(param, param.default);
   return text === '' ? 'none' : `${text}${unitOf(param) === '' ? '' : ` ${unitOf(param)}`}`;
 }
