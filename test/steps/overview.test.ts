@@ -189,8 +189,9 @@ describe('warnings', () => {
     if (severity) expect(run.outcome.warnings[0]).toMatchObject({ code: 'rate-doubtful', value: rate });
   });
 
-  test('float32-underflow: strain, but not volts', async () => {
-    const run = await look(noise(16, 1e-22), { unit: 'strain' });
+  test('float32-underflow: strain stored as float32, but not as float64', async () => {
+    expect((await look(noise(16, 1e-22), { unit: 'strain' })).outcome.warnings).toEqual([]);
+    const run = await look(noise(16, 1e-22).map(Math.fround), { unit: 'strain' });
     expect(run.outcome.warnings).toMatchObject([{ code: 'float32-underflow', severity: 'note' }]);
     // The warning is true: in single precision the density of these samples is zero.
     expect(Math.fround(run.outcome.warnings[0].value!)).toBe(0);

@@ -156,14 +156,19 @@ function rate(series: Series): Warning[] {
   ];
 }
 
+/** Whether the first samples are all float32 values: who stores strain so is likely to compute with it so. */
+function looksFloat32(series: Series): boolean {
+  return series.read(0, Math.min(series.length, 4096)).every((v) => Number.isNaN(v) || Math.fround(v) === v);
+}
+
 function small(series: Series, { deviation }: SeriesScan): Warning[] {
   const density = (2 * deviation ** 2) / series.rate;
-  if (!(deviation > 0 && density < FLOAT32_NORMAL)) return [];
+  if (!(deviation > 0 && density < FLOAT32_NORMAL && looksFloat32(series))) return [];
   return [
     {
       code: 'float32-underflow',
       severity: 'note',
-      found: `the mean power density is ${numberText(density, 2)} in the unit squared per Hz, below the smallest normal float32 (1.18e-38)`,
+      found: `the samples are float32 values, and their mean power density is ${numberText(density, 2)} in the unit squared per Hz, below the smallest normal float32 (1.18e-38)`,
       value: density,
       consequence:
         'In single precision most bins of a power spectrum would become exactly zero. All computing here is in float64 and not affected.',
