@@ -95,6 +95,9 @@ describe('Kolmogorov–Smirnov', () => {
     expect(kolmogorovExact(0.274, 10)).toBeCloseTo(0.6284796154565043, 13);
     expect(kolmogorovSmirnov(0.274, 10)).toBeCloseTo(1 - 0.6284796154565043, 13);
   });
+  test('published: the 5 % point of D₁₀ is 0.409 (table of Miller 1956, MEMORY)', () => {
+    expect(kolmogorovSmirnov(0.409, 10)).toBeCloseTo(0.05, 3);
+  });
   test('closed forms: one sample is uniform; the ends', () => {
     // For n = 1, D = max(u, 1 − u): P(D ≥ d) = 2(1 − d).
     expect(kolmogorovSmirnov(0.7, 1)).toBeCloseTo(0.6, 14);

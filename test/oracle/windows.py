@@ -36,10 +36,15 @@ for name, shape, make in ALL:
             cases.append(
                 {"name": name, "shape": shape, "n": n, "periodic": not sym, "w": make(n, sym).tolist()}
             )
+slepian = []
+for n, nw, k in ((8, 1.5, 3), (33, 2.5, 4), (64, 4, 8), (200, 3, 5)):
+    v, ratios = W.dpss(n, nw, k, return_ratios=True)
+    slepian.append({"n": n, "nw": nw, "tapers": v.tolist(), "ratios": ratios.tolist()})
 print(
     json.dumps(
         {
             "windows": cases,
+            "slepian": slepian,
             "median_bias": {str(n): float(_median_bias(n)) for n in (1, 2, 3, 4, 5, 10, 31, 64, 1001)},
         }
     )

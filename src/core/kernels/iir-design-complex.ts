@@ -8,7 +8,6 @@ export const complex = (re: number, im = 0): Complex => ({ re, im });
 export const add = (a: Complex, b: Complex): Complex => complex(a.re + b.re, a.im + b.im);
 export const subtract = (a: Complex, b: Complex): Complex => complex(a.re - b.re, a.im - b.im);
 export const scale = (a: Complex, factor: number): Complex => complex(a.re * factor, a.im * factor);
-export const conjugate = (a: Complex): Complex => complex(a.re, -a.im);
 export const modulus = (a: Complex): number => Math.hypot(a.re, a.im);
 export const multiply = (a: Complex, b: Complex): Complex =>
   complex(a.re * b.re - a.im * b.im, a.re * b.im + a.im * b.re);

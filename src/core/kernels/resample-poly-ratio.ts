@@ -7,7 +7,7 @@ export interface Ratio {
 }
 
 /** Larger factors would need filters of millions of taps, and mean that the rates do not belong together. */
-export const LARGEST_FACTOR = 65_536;
+const LARGEST_FACTOR = 65_536;
 
 const divisor = (a: number, b: number): number => (b === 0 ? a : divisor(b, a % b));
 

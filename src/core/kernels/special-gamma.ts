@@ -66,7 +66,7 @@ export function gamma(x: number): number {
  *
  * Source: Loader, Fast and accurate computation of binomial probabilities (2000) (MEMORY).
  */
-export function deviance(a: number, x: number): number {
+function deviance(a: number, x: number): number {
   const v = (a - x) / (a + x);
   if (Math.abs(v) > 0.1) return a * Math.log(a / x) + x - a;
   // ln(a/x) = 2 artanh v, minus its first term, which x − a cancels.

@@ -73,7 +73,7 @@ export function smirnovTail(d: number, n: number): number {
  * in Simard & L'Ecuyer, J. Stat. Softw. 39, 11 (2011) (MEMORY). Not valid if parameters of the distribution were fitted
  * to the same samples.
  *
- * @example kolmogorovSmirnov(0.4, 10) // 0.05 to 0.07: the table's 5 % point is 0.409
+ * @example kolmogorovSmirnov(0.409, 10) // 0.05022: the table's 5 % point
  */
 export function kolmogorovSmirnov(d: number, n: number): number {
   if (!(d >= 0 && d <= 1 && Number.isSafeInteger(n) && n >= 1))
