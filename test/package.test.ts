@@ -58,7 +58,7 @@ test('every file that the manifest and the readme point to is in the package', (
     ...[...readme.matchAll(/!\[[^\]]*\]\(([^):]+)\)/g)].map((match) => match[1]),
   ];
   expect(wanted.length).toBeGreaterThan(2);
-  expect(wanted.filter((file) => file !== undefined && !files.includes(file))).toEqual([]);
+  expect(wanted.filter((file) => !files.includes(file))).toEqual([]);
 });
 
 test('the notices name every package in the bundles', () => {

@@ -29,7 +29,7 @@ export async function run(options: RunOptions): Promise<Tally> {
     vsix: options.vsix,
     theme: 'Default Light Modern',
   });
-  for (const suite of suites) await suite.seed?.(profile.workspace);
+  for (const suite of suites) await suite.seed?.(profile.workspace, options.root);
   lap('profile and workspace');
   const screenshots = join(options.outDir, 'screenshots');
   removeOldFailures(screenshots);
@@ -48,7 +48,14 @@ export async function run(options: RunOptions): Promise<Tally> {
     context.setDefaultTimeout(STATE_TIMEOUT);
     const page = await context.newPage();
     const errors = watchPageErrors(page);
-    const workbench = new Workbench({ page, profile, errors, url: server.url, screenshots });
+    const workbench = new Workbench({
+      page,
+      profile,
+      errors,
+      root: options.root,
+      url: server.url,
+      screenshots,
+    });
     await workbench.load();
     lap('editor and browser');
     add(await runSuites(workbench, suites, options.filter));

@@ -1,8 +1,9 @@
 import type { Frame, Locator } from 'playwright-core';
+import { until } from './options';
 import type { Workbench } from './workbench';
 
 /** What the pages promise to tests: attributes, not looks. */
-export type CardState = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled' | 'stale';
+export type CardState = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled' | 'stale' | 'off' | 'blocked';
 
 /** The visible data file page. */
 export const dataView = (workbench: Workbench): Promise<Frame> =>
@@ -33,3 +34,27 @@ export async function cardIn(look: Frame, step: string, state: CardState): Promi
 /** The input of a parameter on a step's card. */
 export const parameter = (look: Frame, step: string, name: string): Locator =>
   card(look, step).locator(`[data-param="${name}"]`);
+
+/** Opens the parameters of a step's card, unless they are open. */
+export async function openParameters(look: Frame, step: string): Promise<void> {
+  const button = card(look, step).locator('[data-action="params"]');
+  if ((await button.getAttribute('aria-expanded')) !== 'true') await button.click();
+}
+
+/** Waits until every figure inside is drawn: its plot holds at least one curve with points, or an image. */
+export async function drawn(inside: Locator): Promise<void> {
+  const plots = inside.locator('.plot');
+  await plots.first().waitFor();
+  await until('the plots to be drawn', async () => {
+    const all = await plots.all();
+    const marks = await Promise.all(
+      all.map((plot) => plot.evaluate((e) => e.querySelectorAll('.trace path[d], .imagelayer image').length)),
+    );
+    return marks.length > 0 && marks.every((count) => count > 0);
+  });
+}
+
+/** The shown text of a number of a card, with its unit. */
+export async function shownNumber(look: Frame, step: string, number: string): Promise<string> {
+  return look.locator(`[data-number="${step}.${number}"] .value`).innerText();
+}

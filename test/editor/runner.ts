@@ -4,8 +4,8 @@ import type { Workbench } from './workbench';
 /** Tests of one subject, run in order in the one window of the run. */
 export interface EditorSuite {
   readonly name: string;
-  /** Puts files into the workspace folder before the editor starts. */
-  readonly seed?: (workspace: string) => void | Promise<void>;
+  /** Puts files into the workspace folder before the editor starts; `root` is the repository with dist/. */
+  readonly seed?: (workspace: string, root: string) => void | Promise<void>;
   /**
    * Brings the state that every test of the suite begins with (all editors are closed before). It runs once, and again
    * after a failed attempt, so a test may use what `start` did but not what an earlier test did.

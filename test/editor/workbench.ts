@@ -21,13 +21,23 @@ export class Workbench {
   readonly page: Page;
   readonly profile: Profile;
   readonly errors: PageErrors;
+  /** The repository, for the built command line. */
+  readonly root: string;
   readonly #url: string;
   readonly #screenshots: string;
 
-  constructor(parts: { page: Page; profile: Profile; errors: PageErrors; url: string; screenshots: string }) {
+  constructor(parts: {
+    page: Page;
+    profile: Profile;
+    errors: PageErrors;
+    root: string;
+    url: string;
+    screenshots: string;
+  }) {
     this.page = parts.page;
     this.profile = parts.profile;
     this.errors = parts.errors;
+    this.root = parts.root;
     this.#url = parts.url;
     this.#screenshots = parts.screenshots;
   }
