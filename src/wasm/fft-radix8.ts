@@ -1,7 +1,6 @@
 // Radix-8 Stockham passes on vectors; see fft-small-radix.ts for the recurrence and the twiddle table.
 import { mulIm, mulRe } from './lanes';
 
-// Eight results of the last butterfly: globals would go through memory, so the butterfly is written out per user.
 const ROOT_HALF: f64 = 0.70710678118654752440;
 
 // @ts-ignore: decorator

@@ -3,14 +3,9 @@
 //
 // A real plan: word 0 length N, 1 complex plan, 2 cosines, 3 sines of 2 pi k / N (k = 0 .. N / 4).
 import { bytes, evens, lanes, mixHigh, mixLow, odds, reversed } from './lanes';
+import { aligned, rowBytes } from './fft-plan';
 import { planBytes, planInit, scratchBytes, transform, transformPairs } from './fft';
 import { turn, turnIm, turnRe } from './twiddle';
-
-// @ts-ignore: decorator
-@inline
-function aligned(at: usize): usize {
-  return (at + 63) & ~63;
-}
 
 function tableBytes<T>(N: i32): usize {
   return aligned(bytes<T>((N >> 2) + 1 + lanes<T>())) + 64;
@@ -26,7 +21,7 @@ export function realPlanBytes<T>(N: i32): usize {
 
 export function realScratchBytes<T>(N: i32): usize {
   const n = innerLength(N);
-  return 4 * (aligned(bytes<T>(n)) + 64) + scratchBytes<T>(n);
+  return 4 * rowBytes<T>(n) + scratchBytes<T>(n);
 }
 
 export function realPlanInit<T>(plan: usize, N: i32, scratch: usize): void {
@@ -189,7 +184,7 @@ export function realForward<T>(plan: usize, x: usize, yr: usize, yi: usize, scra
   const N = load<i32>(plan);
   const inner = load<usize>(plan, 4);
   const n = innerLength(N);
-  const row = aligned(bytes<T>(n)) + 64;
+  const row = rowBytes<T>(n);
   const a = scratch;
   const b = a + row;
   const rest = scratch + 4 * row;
@@ -214,7 +209,7 @@ export function realBackward<T>(plan: usize, xr: usize, xi: usize, y: usize, scr
   const N = load<i32>(plan);
   const inner = load<usize>(plan, 4);
   const n = innerLength(N);
-  const row = aligned(bytes<T>(n)) + 64;
+  const row = rowBytes<T>(n);
   const a = scratch;
   const b = a + row;
   const c = b + row;

@@ -14,7 +14,7 @@ export function turn(k: u64, n: u64): void {
   const quarter = (octant + 1) >> 1;
   const d = odd ? <u64>quarter * n - 4 * k : 4 * k - <u64>quarter * n;
   const a = (0.5 * Math.PI * <f64>d) / <f64>n;
-  let c = Math.cos(a);
+  const c = Math.cos(a);
   let s = Math.sin(a);
   if (odd) s = -s; // angle = quarter turn - a
   if ((quarter & 3) == 0) {
@@ -29,5 +29,22 @@ export function turn(k: u64, n: u64): void {
   } else {
     turnRe = s;
     turnIm = c;
+  }
+}
+
+/** Stores exp(-2 pi i k / n) as (re, im). */
+export function putTurn<T>(at: usize, k: u64, n: u64): void {
+  turn(k, n);
+  store<T>(at, <T>turnRe);
+  store<T>(at + sizeof<T>(), <T>turnIm);
+}
+
+/** Table of one pass: per p, for k = 1 .. radix - 1, exp(-2 pi i p k / n). */
+export function fillPass<T>(at: usize, n: i32, radix: i32): void {
+  for (let p = 0; p < n / radix; p++) {
+    for (let k = 1; k < radix; k++) {
+      putTurn<T>(at, <u64>k * <u64>p, n);
+      at += 2 * sizeof<T>();
+    }
   }
 }

@@ -1,7 +1,7 @@
 import { beforeAll, describe, expect, test } from 'vitest';
 import type { Kernels } from '../../src/core/kernels/kernels';
 import { oracle } from '../oracle/oracle';
-import { loadKernels, relativeError, samples } from './load-kernels';
+import { BUILD_TIME, loadKernels, relativeError, samples } from './load-kernels';
 
 interface Case {
   n: number;
@@ -18,7 +18,7 @@ let wasm: Kernels;
 let plain: Kernels;
 beforeAll(async () => {
   ({ wasm, plain } = await loadKernels());
-});
+}, BUILD_TIME);
 
 const both = (z: { re: ArrayLike<number>; im: ArrayLike<number> }): number[] => [
   ...Array.from(z.re),

@@ -13,7 +13,7 @@ test('blocks do not overlap, are aligned, and everything freed can be had again'
       const bytes = 1 + Math.floor(u[2 * i + 1] * 5000);
       const at = heap.alloc(bytes);
       expect(at % 64).toBe(0);
-      for (const h of held) expect(at + bytes <= h.at || h.at + h.bytes <= at).toBe(true);
+      expect(held.every((h) => at + bytes <= h.at || h.at + h.bytes <= at)).toBe(true);
       held.push({ at, bytes });
     } else {
       const [gone] = held.splice(Math.floor(u[2 * i + 1] * held.length), 1);

@@ -3,6 +3,9 @@ import { buildWasm } from '../../scripts/build-wasm.mjs';
 import { createKernels, type Kernels } from '../../src/core/kernels/kernels';
 import { compileKernels, type WasmModule } from '../../src/core/kernels/wasm-module';
 
+/** Milliseconds a hook may take that has to compile the module first. */
+export const BUILD_TIME = 180_000;
+
 /** The compiled module, built from src/wasm first if it is out of date. */
 export async function loadModule(): Promise<WasmModule> {
   const module = compileKernels(readFileSync(await buildWasm()));
@@ -22,6 +25,16 @@ export function samples(n: number, seed: number): Float64Array {
     s = (s * 16807) % 2147483647;
     return Math.floor(s / 128) / 2 ** 24 - 0.5;
   });
+}
+
+/** Largest |a − b| over all elements; NaN when the lengths differ. */
+export function largestError(a: ArrayLike<number>, b: ArrayLike<number>): number {
+  let largest = a.length === b.length ? 0 : NaN;
+  for (let k = 0; k < b.length; k++) {
+    const d = Math.abs(a[k] - b[k]);
+    if (!(d <= largest)) largest = d;
+  }
+  return largest;
 }
 
 /** Root of Σ(a−b)² / Σb². */

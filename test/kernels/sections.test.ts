@@ -2,7 +2,7 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import type { Kernels } from '../../src/core/kernels/kernels';
 import { steadyState } from '../../src/core/kernels/sections-run';
 import { oracle } from '../oracle/oracle';
-import { loadKernels, relativeError, samples } from './load-kernels';
+import { BUILD_TIME, loadKernels, relativeError, samples } from './load-kernels';
 
 interface Case {
   name: string;
@@ -21,7 +21,7 @@ let wasm: Kernels;
 let plain: Kernels;
 beforeAll(async () => {
   ({ wasm, plain } = await loadKernels());
-});
+}, BUILD_TIME);
 
 describe('against scipy.signal', () => {
   test.each(cases)('$name on $n samples: sosfilt_zi, sosfilt, sosfiltfilt', (c) => {

@@ -2,7 +2,7 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import type { Kernels, WelchAverage, WelchOptions } from '../../src/core/kernels/kernels';
 import { medianBias } from '../../src/core/kernels/welch-stores';
 import { oracle } from '../oracle/oracle';
-import { hann, loadKernels, relativeError, samples } from './load-kernels';
+import { BUILD_TIME, hann, loadKernels, relativeError, samples } from './load-kernels';
 
 interface Span {
   n: number;
@@ -25,7 +25,7 @@ let all: Kernels[];
 beforeAll(async () => {
   const { wasm, plain } = await loadKernels();
   all = [wasm, plain];
-});
+}, BUILD_TIME);
 
 const series = (n: number, seed: number): Float64Array =>
   samples(n, seed).map((v, i) => v + 3 + 0.25 * (i % 7));

@@ -39,8 +39,16 @@ export interface Split<A = Float64Array> {
   im: A;
 }
 
-/** Pairs two kernel arrays; freeing the pair frees both. */
-export function complexArray<P extends Precision>(re: KernelArray<P>, im: KernelArray<P>): ComplexArray<P> {
+const refuse = (): never => {
+  throw new Error('a part of a kernel array cannot be freed: free the whole');
+};
+
+/** Pairs two kernel arrays; `free` gives both back. */
+export function complexArray<P extends Precision>(
+  re: KernelArray<P>,
+  im: KernelArray<P>,
+  free: () => void,
+): ComplexArray<P> {
   if (re.length !== im.length)
     throw new RangeError(`real part has ${re.length} numbers, imaginary part ${im.length}`);
   return {
@@ -48,11 +56,8 @@ export function complexArray<P extends Precision>(re: KernelArray<P>, im: Kernel
     length: re.length,
     re,
     im,
-    sub: (from, to) => complexArray(re.sub(from, to), im.sub(from, to)),
-    free: () => {
-      re.free();
-      im.free();
-    },
+    sub: (from, to) => complexArray(re.sub(from, to), im.sub(from, to), refuse),
+    free,
   };
 }
 

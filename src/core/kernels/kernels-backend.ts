@@ -27,8 +27,8 @@ export interface RfftPlan<P extends Precision = Precision> {
  */
 export interface Backend {
   readonly kind: 'wasm' | 'plain';
-  /** An array of zeros. */
-  array<P extends Precision>(length: number, precision: P): KernelArray<P>;
+  /** An array of zeros; of anything when it need not be cleared. */
+  array<P extends Precision>(length: number, precision: P, cleared?: boolean): KernelArray<P>;
   /** Real and imaginary part, zeros. */
   complex<P extends Precision>(length: number, precision: P): ComplexArray<P>;
   /** Bytes claimed from the system and bytes in use (plans included). */

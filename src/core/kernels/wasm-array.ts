@@ -1,5 +1,4 @@
 import { checkPart, type KernelArray, type Precision, type Samples } from './complex-arrays';
-import type { Heap } from './heap';
 import type { WasmMemory } from './wasm-module';
 
 /** A kernel array in WebAssembly memory. Views are made afresh, since growth of the memory detaches old ones. */
@@ -7,16 +6,22 @@ export class WasmArray<P extends Precision = Precision> implements KernelArray<P
   readonly precision: P;
   readonly length: number;
   private readonly memory: WasmMemory;
-  private readonly heap: Heap | undefined;
+  private readonly release: (() => void) | undefined;
   private at: number;
 
-  /** `heap` is given for the array that owns its memory, not for parts. */
-  constructor(memory: WasmMemory, heap: Heap | undefined, precision: P, length: number, at: number) {
+  /** `release` is given for the array that owns its memory, not for parts. */
+  constructor(
+    memory: WasmMemory,
+    precision: P,
+    length: number,
+    at: number,
+    release: (() => void) | undefined,
+  ) {
     this.memory = memory;
-    this.heap = heap;
     this.precision = precision;
     this.length = length;
     this.at = at;
+    this.release = release;
   }
 
   /** Byte address. Throws after `free`. */
@@ -47,7 +52,7 @@ export class WasmArray<P extends Precision = Precision> implements KernelArray<P
   sub(from: number, to: number): WasmArray<P> {
     checkPart(from, to, this.length);
     const size = this.precision === 'f64' ? 8 : 4;
-    return new WasmArray(this.memory, undefined, this.precision, to - from, this.address + from * size);
+    return new WasmArray(this.memory, this.precision, to - from, this.address + from * size, undefined);
   }
 
   fill(value: number): void {
@@ -55,8 +60,14 @@ export class WasmArray<P extends Precision = Precision> implements KernelArray<P
   }
 
   free(): void {
-    if (!this.heap) throw new Error('a part of a kernel array cannot be freed: free the whole');
-    this.heap.release(this.address);
+    if (!this.release) throw new Error('a part of a kernel array cannot be freed: free the whole');
+    this.forget();
+    this.release();
+  }
+
+  /** Makes every further use an error: the memory is no longer this array's. */
+  forget(): void {
+    if (this.at === 0) throw new Error('this kernel array has been freed');
     this.at = 0;
   }
 }

@@ -55,7 +55,7 @@ export function medianStore(
   const affordable = Math.max(8, Math.floor(memoryLimit / (8 * segments) / 8) * 8);
   const width = Math.min(Math.ceil(bins / 8) * 8, affordable);
   const passes = Math.ceil(bins / width);
-  const rows = backend.array(width * segments, 'f64');
+  const rows = backend.array(width * segments, 'f64', false);
   const result = new Float64Array(bins);
   // Median-mean: the even-numbered segments take the first rows, the odd-numbered the others.
   const firstOdd = Math.ceil(segments / 2);

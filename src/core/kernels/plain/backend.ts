@@ -1,8 +1,7 @@
-import { complexArray } from '../complex-arrays';
 import { checkLengths, type Backend } from '../kernels-backend';
 import { energy, multiply, peak, windowed } from './complex';
 import { plainFftPlan, plainRfftPlan, PlainTransforms } from './fft';
-import { plainArray } from './plain-array';
+import { plainArray, plainComplex } from './plain-array';
 import { cascade } from './sections';
 import { addCross, addMagnitude, medians, power, taper } from './welch-ops';
 
@@ -12,8 +11,7 @@ export function plainBackend(): Backend {
   return {
     kind: 'plain',
     array: plainArray,
-    complex: (length, precision) =>
-      complexArray(plainArray(length, precision), plainArray(length, precision)),
+    complex: plainComplex,
     memory: () => ({ reserved: 0, used: 0 }),
     trim: () => transforms.clear(),
     fftPlan: (length, precision) => plainFftPlan(transforms, length, precision),

@@ -1,4 +1,11 @@
-import { checkPart, type KernelArray, type Precision, type Samples } from '../complex-arrays';
+import {
+  checkPart,
+  complexArray,
+  type ComplexArray,
+  type KernelArray,
+  type Precision,
+  type Samples,
+} from '../complex-arrays';
 
 /** A kernel array on an ordinary typed array. */
 export class PlainArray<P extends Precision = Precision> implements KernelArray<P> {
@@ -51,4 +58,13 @@ export class PlainArray<P extends Precision = Precision> implements KernelArray<
 export function plainArray<P extends Precision>(length: number, precision: P): PlainArray<P> {
   const data = precision === 'f64' ? new Float64Array(length) : new Float32Array(length);
   return new PlainArray(precision, data as Samples<P>, true);
+}
+
+/** Real and imaginary part, zeros. */
+export function plainComplex<P extends Precision>(length: number, precision: P): ComplexArray<P> {
+  const [re, im] = [plainArray(length, precision), plainArray(length, precision)];
+  return complexArray(re, im, () => {
+    re.free();
+    im.free();
+  });
 }
