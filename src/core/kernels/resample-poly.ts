@@ -62,7 +62,8 @@ export function resampleEdges(plan: ResamplePlan, n: number): Resampled['edges']
 
 /**
  * Computes outputs `from` … `from + out.length − 1` from the stretch of input `x` whose first sample has index `offset`.
- * Input outside the stretch counts as zero. Only kept outputs are computed.
+ * Input outside the stretch counts as zero. Only kept outputs are computed, each by the same sum in the same order
+ * whatever the stretch.
  */
 export function resampleInto(
   plan: ResamplePlan,
@@ -73,35 +74,68 @@ export function resampleInto(
 ): void {
   const { up, down, half, taps, phases } = plan;
   const n = x.length;
-  for (let m = 0; m < out.length; m++) {
-    // Index on the fine grid of the newest tap; input i meets tap (reach − i · up).
-    const reach = (from + m) * down + half;
-    const newest = Math.floor(reach / up);
-    const first = newest - taps + 1 - offset;
-    const tap = (reach - newest * up) * taps;
-    const skip = Math.max(0, -first);
-    out[m] = dot(phases, tap + skip, x, first + skip, Math.min(newest + 1 - offset, n) - first - skip);
+  for (let tile = 0; tile < out.length; tile += 4 * up) {
+    const end = Math.min(tile + 4 * up, out.length);
+    for (let r = tile; r < Math.min(tile + up, end); r++) {
+      // Outputs r, r + up, r + 2 up, r + 3 up meet the same taps, on inputs `down` apart. `reach` is the index on the fine
+      // grid of the newest tap; input i meets tap (reach − i · up).
+      const reach = (from + r) * down + half;
+      const newest = Math.floor(reach / up);
+      const tap = (reach - newest * up) * taps;
+      const first = newest - taps + 1 - offset;
+      if (first >= 0 && r + 3 * up < end && first + 3 * down + taps <= n) {
+        four(phases, tap, taps, x, first, down, out, r, up);
+        continue;
+      }
+      for (let m = r, i = first; m < end; m += up, i += down) {
+        const skip = Math.max(0, -i);
+        out[m] = dot(phases, tap + skip, x, i + skip, Math.min(taps, n - i) - skip);
+      }
+    }
   }
 }
 
-/** Σ h[t + k] x[i + k], k < count. Indices are made 32-bit integers: as doubles they cost five times the arithmetic. */
+// Indices below are made 32-bit integers: as doubles they cost five times the arithmetic.
+
+/** Σ h[t + k] x[i + k], k < count. */
 function dot(h: Float64Array, tap: number, x: Float64Array, first: number, count: number): number {
-  let t = tap | 0;
   let i = first | 0;
   const end = (i + count) | 0;
-  // Four sums: the additions of one would wait for each other.
+  const shift = (tap - first) | 0;
+  let sum = 0;
+  for (; i < end; i = (i + 1) | 0) sum += h[(i + shift) | 0] * x[i];
+  return sum;
+}
+
+/** Four such sums at once, so that their additions do not wait for each other and each tap is fetched once. */
+function four(
+  h: Float64Array,
+  tap: number,
+  count: number,
+  x: Float64Array,
+  first: number,
+  step: number,
+  out: Float64Array,
+  at: number,
+  apart: number,
+): void {
+  const [i0, i1, i2, i3] = [first | 0, (first + step) | 0, (first + 2 * step) | 0, (first + 3 * step) | 0];
+  const [t, n] = [tap | 0, count | 0];
   let a = 0;
   let b = 0;
   let c = 0;
   let d = 0;
-  for (; i < end - 3; i = (i + 4) | 0, t = (t + 4) | 0) {
-    a += h[t] * x[i];
-    b += h[t + 1] * x[i + 1];
-    c += h[t + 2] * x[i + 2];
-    d += h[t + 3] * x[i + 3];
+  for (let k = 0; k < n; k = (k + 1) | 0) {
+    const v = h[(t + k) | 0];
+    a += v * x[(i0 + k) | 0];
+    b += v * x[(i1 + k) | 0];
+    c += v * x[(i2 + k) | 0];
+    d += v * x[(i3 + k) | 0];
   }
-  for (; i < end; i = (i + 1) | 0, t = (t + 1) | 0) a += h[t] * x[i];
-  return a + b + (c + d);
+  out[at] = a;
+  out[at + apart] = b;
+  out[at + 2 * apart] = c;
+  out[at + 3 * apart] = d;
 }
 
 /**
