@@ -14,19 +14,19 @@ export interface Stroke {
  * computes both); reference and model differ by their dashes too.
  */
 const ROLES: Readonly<Record<ThemeKind, Readonly<Record<Exclude<TraceRole, 'interval'>, string>>>> = {
-  light: { data: '#0b4f8a', second: '#c25a00', third: '#a33a8f', reference: '#6a6a6a', model: '#1f7a55' },
-  dark: { data: '#6fb7ee', second: '#f0a04b', third: '#e39ad6', reference: '#a6a6a6', model: '#5fc99a' },
+  light: { data: '#1a6fc4', second: '#cf5408', third: '#5c1550', reference: '#6a6a6a', model: '#1f7a55' },
+  dark: { data: '#4d9df0', second: '#ea7f2e', third: '#e9c4ea', reference: '#a6a6a6', model: '#5fc99a' },
   'contrast-light': {
-    data: '#00386b',
-    second: '#9a3f00',
-    third: '#7d0f6b',
+    data: '#0a4fb5',
+    second: '#9c3800',
+    third: '#451040',
     reference: '#292929',
     model: '#00583a',
   },
   'contrast-dark': {
-    data: '#7cc8ff',
-    second: '#ffb347',
-    third: '#ff9df0',
+    data: '#5a9dff',
+    second: '#f5871f',
+    third: '#efc9f2',
     reference: '#ffffff',
     model: '#66f0b0',
   },

@@ -1,4 +1,5 @@
 import type { ThemeKind } from './colours';
+import { themeKind } from './theme-kind';
 
 /** Everything a figure takes from the editor's theme. */
 export interface Theme {
@@ -9,14 +10,6 @@ export interface Theme {
   readonly ground: string;
   readonly font: string;
   readonly fontSize: number;
-}
-
-/** Kind of theme from the classes the editor puts on the body. */
-export function themeKind(classes: Iterable<string>): ThemeKind {
-  const has = new Set(classes);
-  if (has.has('vscode-high-contrast-light')) return 'contrast-light';
-  if (has.has('vscode-high-contrast')) return 'contrast-dark';
-  return has.has('vscode-light') ? 'light' : 'dark';
 }
 
 export function readTheme(body: HTMLElement = document.body): Theme {

@@ -35,7 +35,7 @@ export function AddStep({ addable }: { readonly addable: readonly Addable[] }): 
                   <h3>{word}</h3>
                   {steps.map((a) => (
                     <button type="button" key={a.do} class="add-item" data-add={a.do} onClick={() => add(a)}>
-                      <b>{a.title}</b> <span class="muted">of {a.of.join(', ')}</span>
+                      <b>{a.title}</b> {a.of.length > 0 && <span class="muted">of {a.of.join(', ')}</span>}
                       <span class="add-summary">{a.summary}</span>
                     </button>
                   ))}

@@ -1,4 +1,4 @@
-import type { JSX } from 'preact';
+import type { JSX, TargetedFocusEvent, TargetedKeyboardEvent, TargetedMouseEvent } from 'preact';
 import type { CardView } from '../../src/core/protocol/panel';
 import { useLook } from './context';
 
@@ -74,16 +74,16 @@ export function CardMenu({ view, index, count }: Props): JSX.Element {
 }
 
 /** The list closes when something in it was chosen, when the focus leaves it, and on Escape. */
-function closeAfterChoice(e: JSX.TargetedMouseEvent<HTMLDetailsElement>): void {
+function closeAfterChoice(e: TargetedMouseEvent<HTMLDetailsElement>): void {
   if (e.target instanceof Element && e.target.closest('button')) e.currentTarget.open = false;
 }
 
-function closeWhenLeft(e: JSX.TargetedFocusEvent<HTMLDetailsElement>): void {
+function closeWhenLeft(e: TargetedFocusEvent<HTMLDetailsElement>): void {
   if (!(e.relatedTarget instanceof Node && e.currentTarget.contains(e.relatedTarget)))
     e.currentTarget.open = false;
 }
 
-function closeOnEscape(e: JSX.TargetedKeyboardEvent<HTMLDetailsElement>): void {
+function closeOnEscape(e: TargetedKeyboardEvent<HTMLDetailsElement>): void {
   if (e.key !== 'Escape' || !e.currentTarget.open) return;
   e.stopPropagation();
   e.currentTarget.open = false;

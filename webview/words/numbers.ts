@@ -30,10 +30,11 @@ export function numberText(value: number, digits = USUAL_DIGITS): string {
   return signed(`${trimmed(mantissa)} × 10${superscript(exponent.replace('+', ''))}`, value);
 }
 
-/** Significant digits that an interval leaves meaningful: down to a tenth of its half width. */
+/** Significant digits that an interval leaves meaningful: down to the second digit of its half width. */
 export function digitsFor(value: number, low: number | undefined, high: number | undefined): number {
   if (low === undefined || high === undefined || !(high > low) || value === 0) return USUAL_DIGITS;
-  const digits = Math.ceil(Math.log10(Math.abs(value) / ((high - low) / 2))) + 1;
+  const place = (v: number): number => Math.floor(Math.log10(v));
+  const digits = place(Math.abs(value)) - place((high - low) / 2) + 2;
   return Number.isFinite(digits) ? Math.max(2, Math.min(10, digits)) : USUAL_DIGITS;
 }
 

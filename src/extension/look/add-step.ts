@@ -31,7 +31,7 @@ export async function pickStep(session: LookSession): Promise<void> {
   }
   const items = addableSteps(session.recipe, session.steps).map((a) => ({
     label: a.title,
-    description: `${GROUP_WORDS[a.group]}, of ${a.of.join(', ')}`,
+    description: `${GROUP_WORDS[a.group]}${a.of.length > 0 ? `, of ${a.of.join(', ')}` : ''}`,
     detail: a.summary,
     step: a,
   }));
