@@ -1,4 +1,4 @@
-import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, rmSync, writeFileSync } from 'node:fs';
+import { closeSync, existsSync, fsyncSync, mkdirSync, openSync, renameSync, rmSync, writeFileSync } from 'node:fs';
 import { basename, dirname, join } from 'node:path';
 import { UserError } from '../core/data/errors';
 
@@ -16,7 +16,7 @@ export function writeAtomically(path: string, content: string | Uint8Array): voi
     }
     renameSync(temporary, path);
   } catch (e) {
-    rmSync(temporary, { force: true });
+    if (existsSync(temporary)) rmSync(temporary);
     const reason = e instanceof Error ? e.message : String(e);
     throw new UserError(
       'cannot-write',
