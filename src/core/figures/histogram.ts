@@ -16,12 +16,7 @@ export interface HistogramInput {
 }
 
 /** Expected count per bin of a Gaussian with the same total. Below half a sample it is cut to NaN. */
-function gaussianCounts(
-  edges: Float64Array,
-  total: number,
-  centre: number,
-  width: number,
-): Float64Array {
+function gaussianCounts(edges: Float64Array, total: number, centre: number, width: number): Float64Array {
   const out = new Float64Array(edges.length - 1);
   for (let k = 0; k < out.length; k++) {
     const middle = (edges[k] + edges[k + 1]) / 2;
