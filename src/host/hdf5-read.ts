@@ -4,12 +4,24 @@ import { decodeSamples } from '../core/formats/samples';
 import { captureMessages, reasonOf } from './hdf5-messages';
 import { numericType } from './hdf5-types';
 
-/** Bytes of the transfer buffer in the library's memory; allocated once and kept. */
+/** Bytes of the transfer buffer in the library's memory; kept, and grown only for a dataset with larger chunks. */
 const BUFFER_BYTES = 1 << 22;
 /** A chunk is unpacked whole; up to this many samples of it are kept for the next read. */
 const CACHED_SAMPLES = 1 << 22;
 
 let buffer = 0;
+let bufferBytes = 0;
+
+function transferBuffer(bytes: number): number {
+  const memory = lib as unknown as { _malloc(n: number): number; _free(at: number): void };
+  if (bytes > bufferBytes) {
+    if (buffer !== 0) memory._free(buffer);
+    buffer = memory._malloc(bytes);
+    bufferBytes = buffer === 0 ? 0 : bytes;
+    if (buffer === 0) throw new Error(`no memory for ${bytes} bytes of HDF5 data`);
+  }
+  return buffer;
+}
 
 interface Context {
   readonly file: File;
@@ -35,8 +47,10 @@ export function datasetReader(
 
   const direct: Read = (at, axis, from, to, into) => {
     if (type === undefined) throw new Error(`${path} is not numeric`);
-    const most = Math.max(1, Math.floor(BUFFER_BYTES / meta.size));
-    buffer ||= (lib as unknown as { _malloc(n: number): number })._malloc(BUFFER_BYTES);
+    // A chunk must go through in one piece, or it would be unpacked once per piece.
+    const chunk = filters.length > 0 ? Math.min(CACHED_SAMPLES, meta.chunks?.[axis] ?? 0) : 0;
+    const most = Math.max(chunk, Math.floor(BUFFER_BYTES / meta.size));
+    const target = transferBuffer(most * meta.size);
     const stride = at.map(() => 1n);
     for (let n = from; n < to; n += most) {
       const count = Math.min(most, to - n);
@@ -49,11 +63,11 @@ export function datasetReader(
         counts,
         offsets,
         stride,
-        BigInt(buffer),
+        BigInt(target),
       );
       const messages = stop();
       if (status < 0) throw readError(context.name, path, n, n + count, filters, messages);
-      const bytes = lib.HEAPU8.subarray(buffer, buffer + count * meta.size);
+      const bytes = lib.HEAPU8.subarray(target, target + count * meta.size);
       decodeSamples(bytes, count, { type, littleEndian: true, stride: meta.size }, into, n - from);
     }
   };

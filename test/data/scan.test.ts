@@ -124,6 +124,17 @@ describe('saturation', () => {
     expect(r.valid).toEqual([{ from: 0, to: 200_000 }]);
   });
 
+  it('finds a run that the series begins or ends with', async () => {
+    const x = noise(10_000);
+    x.fill(1, 0, 20);
+    x.fill(-1, 9990, 10_000);
+    const r = await scan(x, { rate: 4096 });
+    expect(r.saturated.spans).toEqual([
+      { from: 0, to: 20 },
+      { from: 9990, to: 10_000 },
+    ]);
+  });
+
   it('says nothing of seven equal samples, or of a flat stretch inside the range', async () => {
     const x = noise(10_000);
     x.fill(1, 100, 107);

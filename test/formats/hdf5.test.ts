@@ -14,7 +14,7 @@ function find(node: FileNode, path: string): FileNode | undefined {
   return node.path === path ? node : node.children.map((c) => find(c, path)).find((n) => n !== undefined);
 }
 
-describe('HDF5 written by another library (fixtures of make_hdf5.py)', () => {
+describe('HDF5 written by another library (fixtures of make-hdf5.py)', () => {
   it('takes rate and start from the group, unit from the dataset, and says where', () => {
     const f = openDataFile(fixture('layouts.h5'));
     const [c] = f.channels;

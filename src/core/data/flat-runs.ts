@@ -3,7 +3,7 @@ import type { Span } from './spans';
 /** Equal consecutive samples that count as flat. */
 export const FLAT_SAMPLES = 8;
 /** Seconds of exact zeros that count as digital zero. */
-export const ZERO_SECONDS = 0.05;
+const ZERO_SECONDS = 0.05;
 /** Used for zeros when no rate is known. */
 const ZERO_SAMPLES_UNKNOWN = 256;
 /** Spans kept in each list; what comes after is only counted. */
@@ -28,7 +28,7 @@ class SpanList {
   }
 }
 
-export function zeroSamples(rate: number | undefined): number {
+function zeroSamples(rate: number | undefined): number {
   return rate === undefined ? ZERO_SAMPLES_UNKNOWN : Math.max(FLAT_SAMPLES, Math.ceil(ZERO_SECONDS * rate));
 }
 
@@ -36,10 +36,9 @@ export function zeroSamples(rate: number | undefined): number {
  * Finds clipping and digital zero while samples go by.
  *
  * Saturated: a run of at least 8 equal samples at the smallest or the largest value of the whole span. A converter
- * that clips repeats its end value; eight equal readings at the very end of the range are all but impossible in noise
- * (one in 10^8 even if every second sample sat there by chance at one level in ten), while equal readings inside the
- * range are common in coarsely digitised data and say nothing. A channel that sits more than half its time in such
- * runs, or never moves, is a state or a mask and not clipped.
+ * that clips repeats its end value. Noise rarely visits the very end of its range and does not stay there, while equal
+ * readings inside the range are common in coarsely digitised data and say nothing. A channel that sits more than half
+ * its time in such runs, or never moves, is a state or a mask and not clipped.
  *
  * Digital zero: exactly 0 for at least 0.05 s (256 samples where no rate is known): a dropped-out source, not noise.
  * Such a run is not counted as saturated even where 0 is the smallest value.
@@ -67,7 +66,7 @@ export class FlatRuns {
       return;
     }
     if (value === min) this.#low.add(from, to);
-    if (value === max && max !== min) this.#high.add(from, to);
+    if (value === max) this.#high.add(from, to);
   }
 
   finish(min: number, max: number, count: number): { saturated: FlatSpans; zeros: FlatSpans } {

@@ -1,4 +1,3 @@
-import { strFromU8 } from 'fflate';
 import { UserError } from '../data/errors';
 import type { ByteSource } from './format';
 
@@ -21,13 +20,21 @@ export function viewOf(bytes: Uint8Array): DataView {
   return new DataView(bytes.buffer, bytes.byteOffset, bytes.byteLength);
 }
 
-/** Text of bytes, one character per byte: exact for ASCII, and every offset stays a byte offset. */
+/** Part of the encoding standard that every runtime has and the language's own types lack. */
+interface Decoder {
+  decode(bytes: Uint8Array): string;
+}
+const { TextDecoder: Decoders } = globalThis as unknown as { TextDecoder: new (label: string) => Decoder };
+const SINGLE = new Decoders('windows-1252');
+const UTF8 = new Decoders('utf-8');
+
+/** Text of bytes, one character per byte, so that every index stays an offset; exact for ASCII. */
 export function latin1(bytes: Uint8Array): string {
-  return strFromU8(bytes, true);
+  return SINGLE.decode(bytes);
 }
 
 export function utf8(bytes: Uint8Array): string {
-  return strFromU8(bytes);
+  return UTF8.decode(bytes);
 }
 
 export function startsWith(bytes: Uint8Array, magic: string): boolean {

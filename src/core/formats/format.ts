@@ -78,13 +78,6 @@ export interface OpenFile {
   close(): void;
 }
 
-/** What the caller may say that the file does not: part of an input in a recipe. */
-export interface OpenOptions {
-  readonly rate?: number;
-  readonly start?: GpsTime;
-  readonly unit?: string;
-}
-
 /** One file format. New formats register here and nothing else changes. */
 export interface Format {
   readonly id: string;

@@ -1,5 +1,5 @@
 import { factsFrom, type Clue, type SeriesFacts } from './facts';
-import { latin1 } from './bytes';
+import { startsWith } from './bytes';
 import type { ChannelFacts, Format, Hdf5Attribute, Hdf5Dataset, Hdf5Group } from './format';
 import { leafName, treeOf } from './hdf5-tree';
 import { meaningOf } from './meaning';
@@ -26,9 +26,8 @@ export const hdf5Format: Format = {
   extensions: ['h5', 'hdf5', 'hdf', 'he5'],
   recognise(head, name) {
     // The signature may sit behind a user block of 512, 1024, 2048 … bytes.
-    const text = latin1(head);
-    for (let at = 0; at < text.length; at = at === 0 ? 512 : at * 2)
-      if (text.startsWith(SIGNATURE, at)) return 2;
+    for (let at = 0; at < head.length; at = at === 0 ? 512 : at * 2)
+      if (startsWith(head.subarray(at), SIGNATURE)) return 2;
     return /\.(h5|hdf5|hdf|he5)$/i.test(name) ? 1 : 0;
   },
   open(access) {

@@ -5,8 +5,8 @@ import { crc32 } from './crc32';
 import type { ByteSource } from './format';
 import { gzipHeaderEnd } from './gzip-header';
 
-/** Compressed bytes fed at once. Deflate grows at most 1032 times, so one step makes at most 16 MiB. */
-const FEED = 1 << 14;
+/** Compressed bytes fed at once. Deflate grows at most 1032 times, so one step makes at most 68 MB. */
+const FEED = 1 << 16;
 /** Bytes of output between two points from which inflating can be taken up again. */
 const BETWEEN_POINTS = 1 << 23;
 /** Output kept for reads near the last one. */

@@ -13,10 +13,10 @@ export type InstantReading =
  * GPS seconds from here on would lie after July 2027; Unix seconds reached the number in July 2017. A bare number
  * below is taken for GPS, above for Unix: the trade counts in GPS, so only a number that GPS cannot explain is Unix.
  */
-export const BARE_UNIX_FROM = 1_500_000_000;
+const BARE_UNIX_FROM = 1_500_000_000;
 
 /** Smaller numbers are seconds since something the file does not say (GPS 1e8 is March 1983, before digital records). */
-export const ABSOLUTE_FROM = 100_000_000;
+const ABSOLUTE_FROM = 100_000_000;
 
 /**
  * Reads a time: seconds as number, integer or decimal text (exact), seconds in ms/µs/ns by magnitude, or ISO text in UTC.

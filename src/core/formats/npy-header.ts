@@ -67,7 +67,7 @@ export function shapeText(shape: readonly number[]): string {
 }
 
 /** Parses the dictionary text {'descr': '<f8', 'fortran_order': False, 'shape': (3, 4), }. */
-export function parseNpyHeader(text: string, dataOffset: number, name: string): NpyHeader {
+function parseNpyHeader(text: string, dataOffset: number, name: string): NpyHeader {
   const descr =
     /['"]descr['"]\s*:\s*(?:['"]([^'"]*)['"]|(\[[\s\S]*?\])\s*,\s*['"](?:fortran_order|shape)['"])/.exec(
       text,

@@ -37,8 +37,11 @@ export function decodeSamples(
   at: number,
 ): void {
   const size = SAMPLE_BYTES[layout.type];
-  const packed = compact(bytes, count, size, layout.stride);
-  if (!layout.littleEndian && size > 1) swapBytes(packed, size);
+  const swap = !layout.littleEndian && size > 1;
+  // A view needs aligned bytes, and swapping must not touch the caller's: otherwise they are used where they lie.
+  const inPlace = layout.stride === size && !swap && bytes.byteOffset % size === 0;
+  const packed = inPlace ? bytes : compact(bytes, count, size, layout.stride);
+  if (swap) swapBytes(packed, size);
   const buffer = packed.buffer;
   const start = packed.byteOffset;
   switch (layout.type) {

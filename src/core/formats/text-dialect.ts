@@ -5,7 +5,7 @@ import { readInstant } from './instant';
 import { meaningOf, wordsOf } from './meaning';
 import { cellValue, splitCells, type CellStyle, type Delimiter } from './text-cells';
 
-export interface TextColumn {
+interface TextColumn {
   /** Unique in the file. */
   readonly name: string;
   /** As written in the header, "" without one. */
