@@ -41,7 +41,10 @@ async function loadKernels() {
 
 /** A SciPy process that does one round of a work at a time, or undefined without SciPy. */
 function reference() {
-  const probe = spawnSync(python, ['-c', 'import scipy, numpy; print(scipy.__version__, numpy.__version__)']);
+  const probe = spawnSync(python, [
+    '-c',
+    'import scipy, numpy; print(scipy.__version__, "with NumPy", numpy.__version__)',
+  ]);
   if (probe.status !== 0) return undefined;
   const env = { ...process.env, OMP_NUM_THREADS: '1', OPENBLAS_NUM_THREADS: '1', MALLOC_MMAP_MAX_: '0' };
   delete env.OPENBLAS_CORETYPE;
@@ -51,7 +54,7 @@ function reference() {
   const child = spawn(python, [script, folder], { env, stdio: ['pipe', 'pipe', 'inherit'] });
   const lines = createInterface(child.stdout)[Symbol.asyncIterator]();
   return {
-    version: probe.stdout.toString().trim(),
+    name: `SciPy ${probe.stdout.toString().trim()}`,
     round: async (name) => {
       child.stdin.write(`${name}\n`);
       const { value, done } = await lines.next();
@@ -85,44 +88,60 @@ async function measure(work, kernels, scipy) {
     const a = ours(run);
     if (scipy) compare(work, a.numbers, (await scipy.round(work.name)).numbers);
   }
-  const rounds = [];
+  const times = [];
   for (let i = 0; i < Number(options.rounds); i++) {
-    const a = ours(run).cpu;
-    rounds.push({ ours: a, scipy: scipy ? (await scipy.round(work.name)).cpu : null });
+    times.push({ ours: ours(run).cpu, scipy: scipy ? (await scipy.round(work.name)).cpu : null });
   }
-  const result = { work: work.name, ours: median(rounds.map((r) => r.ours)), bar: work.bar, rounds };
-  if (!scipy) return { ...result, reference: null, ratio: null };
-  const ratios = rounds.map((r) => r.ours / r.scipy);
-  const reference = median(rounds.map((r) => r.scipy));
-  return { ...result, reference, ratio: median(ratios), low: Math.min(...ratios), high: Math.max(...ratios) };
+  const seconds = { ours: median(times.map((t) => t.ours)) };
+  const result = {
+    work: work.name,
+    reference: null,
+    ratio: null,
+    rounds: times.length,
+    bar: work.bar,
+    seconds,
+  };
+  if (!scipy) return result;
+  const ratios = times.map((t) => t.ours / t.scipy);
+  seconds.reference = median(times.map((t) => t.scipy));
+  const spread = [Math.min(...ratios), Math.max(...ratios)];
+  return { ...result, reference: scipy.name, ratio: median(ratios), spread };
 }
 
-try {
+function row(r) {
+  const times = ms(r.seconds.ours) + (r.reference ? ` ${ms(r.seconds.reference)}` : '');
+  const ratio = r.reference
+    ? `${r.ratio.toFixed(3).padStart(8)}  (${r.spread.map((x) => x.toFixed(2)).join(' .. ')})`
+    : '';
+  return `${r.work.padEnd(20)}${times}${ratio.padEnd(26)}${r.bar}`;
+}
+
+async function main() {
   const chosen = works.filter((w) => !options.only || w.name === options.only);
   if (chosen.length === 0)
-    throw new Error(`no work ${options.only}: there are ${works.map((w) => w.name).join(', ')}`);
+    throw new Error(`no work ${options.only}; there are ${works.map((w) => w.name).join(', ')}`);
   const scipy = reference();
   console.log(
     scipy
-      ? `CPU time of one thread, ${options.rounds} rounds, SciPy and NumPy ${scipy.version}`
+      ? `CPU time of one thread, medians of ${options.rounds} rounds, against ${scipy.name}`
       : `SciPy is absent (${python}): our CPU time only, no ratios`,
   );
-  console.log(`${'work'.padEnd(20)}  ours ms  SciPy ms   ratio  (least .. most)   bar`);
+  console.log(`${'work'.padEnd(20)}  ours ms  SciPy ms   ratio  (least .. most)  bar`);
   const results = [];
   for (const work of chosen) {
     // Fresh kernels per work: each starts with an empty memory.
-    const r = await measure(work, await loadKernels(), scipy);
-    results.push(r);
-    const ratio =
-      r.ratio === null
-        ? ''
-        : `${r.ratio.toFixed(3).padStart(7)}  (${r.low.toFixed(2)} .. ${r.high.toFixed(2)})`;
-    console.log(
-      `${r.work.padEnd(20)}${ms(r.ours)}${r.reference === null ? '' : ` ${ms(r.reference)}`} ${ratio.padEnd(24)}${r.bar}`,
-    );
+    results.push(await measure(work, await loadKernels(), scipy));
+    console.log(row(results.at(-1)));
   }
   scipy?.end();
   if (options.json) writeFileSync(options.json, `${JSON.stringify(results, null, 1)}\n`);
+}
+
+try {
+  await main();
+} catch (error) {
+  console.error(`bench: ${error.message}`);
+  process.exitCode = 1;
 } finally {
   rmSync(folder, { recursive: true, force: true });
 }

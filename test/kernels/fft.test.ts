@@ -173,8 +173,43 @@ describe('plans', () => {
     x.free();
   });
 
+  test('tables over the limit of 256 MiB are dropped, and come back', () => {
+    const lengths = [2 ** 22, 2 ** 22 + 2 ** 20, 2 ** 22 + 2 ** 21, 3 * 2 ** 21];
+    const x = wasm.complex(2 ** 23, 'f64');
+    x.re.view()[1] = 1;
+    const plans = lengths.map((n) => wasm.fftPlan(n, 'f64'));
+    for (const plan of [...plans, ...plans]) {
+      const y = x.sub(0, plan.length);
+      plan.forward(y, y);
+      const phase = (-2 * Math.PI * 12345) / plan.length;
+      expect(y.re.view()[12345]).toBeCloseTo(Math.cos(phase), 13);
+      expect(y.im.view()[12345]).toBeCloseTo(Math.sin(phase), 13);
+      x.re.fill(0);
+      x.im.fill(0);
+      x.re.view()[1] = 1;
+    }
+    x.free();
+    const { used } = wasm.memory();
+    wasm.trim();
+    expect(used - wasm.memory().used).toBeLessThan(256 * 2 ** 20 + 2 * 2 ** 23 * 8 + 2 ** 20);
+  });
+
+  test('plans of one length share their tables', () => {
+    const x = wasm.complex(4096, 'f64');
+    const [a, b] = [wasm.fftPlan(4096, 'f64'), wasm.fftPlan(4096, 'f64')];
+    a.forward(x, x);
+    const { used } = wasm.memory();
+    b.forward(x, x);
+    expect(wasm.memory().used).toBe(used);
+    x.free();
+  });
+
   test('misuse is refused with a sentence', () => {
     expect(() => wasm.fftPlan(0, 'f64')).toThrow(/from 1 to 2\^27, not 0/);
+    expect(() => wasm.fftPlan(2 ** 24 + 1, 'f64')).toThrow(
+      /16777217 samples is too long.*prime factors above 5/,
+    );
+    expect(() => wasm.array(-1, 'f64')).toThrow(/cannot have -1 numbers/);
     expect(() => wasm.fft(new Float64Array(4), new Float64Array(5))).toThrow(/same length/);
     expect(() => wasm.irfft(new Float64Array(4), new Float64Array(4), 8)).toThrow(
       /spectrum of 5 bins, not 4/,

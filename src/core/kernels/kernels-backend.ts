@@ -99,9 +99,26 @@ export function checkLengths(what: string, need: number, ...arrays: { length: nu
   }
 }
 
-/** Throws unless `length` is a transform length this library can hold. */
+const onlySmallFactors = (n: number): boolean => {
+  let rest = n;
+  for (const p of [2, 3, 5]) while (rest % p === 0) rest /= p;
+  return rest === 1;
+};
+
+/** Throws unless the kernels can hold a transform of `length` points in their 4 GiB. */
 export function checkTransformLength(length: number): void {
   if (!Number.isInteger(length) || length < 1 || length > 2 ** 27) {
     throw new RangeError(`a transform needs a whole number of samples from 1 to 2^27, not ${length}`);
   }
+  if (length > 2 ** 24 && (length % 2 === 1 || !onlySmallFactors(length))) {
+    throw new RangeError(
+      `a transform of ${length} samples is too long: beyond 2^24 the length must be even and without prime factors ` +
+        'above 5; use a slightly shorter span',
+    );
+  }
+}
+
+/** Throws unless `length` can be the length of an array. */
+export function checkArrayLength(length: number): void {
+  if (!Number.isInteger(length) || length < 0) throw new RangeError(`an array cannot have ${length} numbers`);
 }

@@ -1,6 +1,6 @@
 import { complexArray, type ComplexArray, type Precision } from './complex-arrays';
 import { Heap } from './heap';
-import { checkLengths, type Backend } from './kernels-backend';
+import { checkArrayLength, checkLengths, type Backend } from './kernels-backend';
 import { address, WasmArray } from './wasm-array';
 import { wasmFftPlan, wasmRfftPlan } from './wasm-fft';
 import { instantiate, type WasmModule } from './wasm-module';
@@ -28,12 +28,14 @@ export function wasmBackend(module: WasmModule): Backend {
   const plans = new WasmPlans(instance, heap);
 
   const array = <P extends Precision>(length: number, precision: P, cleared = true): WasmArray<P> => {
+    checkArrayLength(length);
     const at = heap.alloc(length * SIZE[precision]);
     const made = new WasmArray(memory, precision, length, at, () => heap.release(at));
     if (cleared) made.fill(0);
     return made;
   };
   const complex = <P extends Precision>(length: number, precision: P): ComplexArray<P> => {
+    checkArrayLength(length);
     const { apart, total } = complexLayout(length * SIZE[precision]);
     const at = heap.alloc(total);
     const part = (from: number): WasmArray<P> => new WasmArray(memory, precision, length, from, undefined);

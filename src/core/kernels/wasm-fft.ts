@@ -13,10 +13,12 @@ export function wasmFftPlan<P extends Precision>(
 ): FftPlan<P> {
   checkTransformLength(length);
   const f = instance.typed[precision];
+  const plan = plans.plan(length, precision, false);
+  const what = `transform of length ${length}`;
   const run = (xr: KernelArray, xi: KernelArray, yr: KernelArray, yi: KernelArray): void => {
-    checkLengths(`transform of length ${length}`, length, xr, yr);
-    const { plan, scratch } = plans.get(length, precision, false);
-    f.transform(plan, address(xr), address(xi), address(yr), address(yi), scratch);
+    checkLengths(what, length, xr, yr);
+    const scratch = plans.ready(plan);
+    f.transform(plan.at, address(xr), address(xi), address(yr), address(yi), scratch);
   };
   return {
     length,
@@ -35,10 +37,13 @@ export function wasmRfftPlan<P extends Precision>(
 ): RfftPlan<P> {
   checkTransformLength(length);
   const f = instance.typed[precision];
+  const plan = plans.plan(length, precision, true);
   const bins = Math.floor(length / 2) + 1;
+  const what = `real transform of length ${length}`;
+  const whatBins = `spectrum of ${length} real samples`;
   const check = (samples: KernelArray, spectrum: ComplexArray): void => {
-    checkLengths(`real transform of length ${length}`, length, samples);
-    checkLengths(`spectrum of ${length} real samples`, bins, spectrum);
+    checkLengths(what, length, samples);
+    checkLengths(whatBins, bins, spectrum);
   };
   return {
     length,
@@ -46,13 +51,13 @@ export function wasmRfftPlan<P extends Precision>(
     precision,
     forward: (x, y) => {
       check(x, y);
-      const { plan, scratch } = plans.get(length, precision, true);
-      f.realForward(plan, address(x), address(y.re), address(y.im), scratch);
+      const scratch = plans.ready(plan);
+      f.realForward(plan.at, address(x), address(y.re), address(y.im), scratch);
     },
     backward: (x, y) => {
       check(y, x);
-      const { plan, scratch } = plans.get(length, precision, true);
-      f.realBackward(plan, address(x.re), address(x.im), address(y), scratch);
+      const scratch = plans.ready(plan);
+      f.realBackward(plan.at, address(x.re), address(x.im), address(y), scratch);
     },
   };
 }

@@ -1,22 +1,28 @@
 import type { Precision } from './complex-arrays';
 import type { Heap } from './heap';
-import type { TypedExports, WasmInstance } from './wasm-module';
+import type { WasmInstance } from './wasm-module';
 
-/** Cached plans beyond this many bytes are dropped, least recently used first. */
+/** Tables beyond this many bytes are dropped, least recently used first. */
 const CACHE_BYTES = 256 * 1048576;
 
-interface CachedPlan {
+/** A plan whose tables may be dropped and built again; `at` is their address, 0 while dropped. */
+export interface WasmPlan {
+  readonly length: number;
+  readonly precision: Precision;
+  readonly real: boolean;
   at: number;
   bytes: number;
   scratch: number;
+  lastUse: number;
 }
 
 /** Transform tables in kernel memory, built on first use, and the scratch they share. */
 export class WasmPlans {
   private readonly heap: Heap;
   private readonly typed: WasmInstance['typed'];
-  private readonly cache = new Map<string, CachedPlan>();
-  private cached = 0;
+  private readonly known = new Map<string, WasmPlan>();
+  private bytes = 0;
+  private uses = 0;
   private scratchAt = 0;
   private scratchBytes = 0;
 
@@ -25,42 +31,60 @@ export class WasmPlans {
     this.typed = instance.typed;
   }
 
-  /** Address of the plan and of scratch large enough for it; both hold until the next call. */
-  get(length: number, precision: Precision, real: boolean): { plan: number; scratch: number } {
-    const key = `${precision}${real ? 'r' : 'c'}${length}`;
-    let plan = this.cache.get(key);
-    if (plan) this.cache.delete(key);
-    else plan = this.build(length, this.typed[precision], real);
-    this.cache.set(key, plan); // last in the map = most recently used
-    this.reserveScratch(plan.scratch);
-    return { plan: plan.at, scratch: this.scratchAt };
+  /** The one plan of a length; nothing is built before it is used. */
+  plan(length: number, precision: Precision, real: boolean): WasmPlan {
+    const key = `${precision}${real ? ' real ' : ' '}${length}`;
+    let plan = this.known.get(key);
+    if (!plan) {
+      plan = { length, precision, real, at: 0, bytes: 0, scratch: 0, lastUse: 0 };
+      this.known.set(key, plan);
+    }
+    return plan;
   }
 
-  /** Drops all plans and the scratch. */
+  /** Makes the tables and the scratch ready; returns the address of the scratch. Both hold until the next call. */
+  ready(plan: WasmPlan): number {
+    plan.lastUse = ++this.uses;
+    if (plan.at === 0) this.build(plan);
+    this.reserveScratch(plan.scratch);
+    return this.scratchAt;
+  }
+
+  /** Drops all tables and the scratch. */
   clear(): void {
-    for (const plan of this.cache.values()) this.heap.release(plan.at);
-    this.cache.clear();
-    this.cached = 0;
+    for (const plan of this.built()) this.drop(plan);
     if (this.scratchAt) this.heap.release(this.scratchAt);
     this.scratchAt = 0;
     this.scratchBytes = 0;
   }
 
-  private build(length: number, f: TypedExports, real: boolean): CachedPlan {
-    const bytes = (real ? f.realPlanBytes(length) : f.planBytes(length)) >>> 0;
-    const scratch = (real ? f.realScratchBytes(length) : f.scratchBytes(length)) >>> 0;
-    for (const [key, old] of this.cache) {
-      if (this.cached + bytes <= CACHE_BYTES) break;
-      this.heap.release(old.at);
-      this.cache.delete(key);
-      this.cached -= old.bytes;
+  private build(plan: WasmPlan): void {
+    const { length, real } = plan;
+    const f = this.typed[plan.precision];
+    plan.bytes = (real ? f.realPlanBytes(length) : f.planBytes(length)) >>> 0;
+    plan.scratch = (real ? f.realScratchBytes(length) : f.scratchBytes(length)) >>> 0;
+    for (
+      let held = this.built();
+      held.length > 0 && this.bytes + plan.bytes > CACHE_BYTES;
+      held = this.built()
+    ) {
+      this.drop(held.reduce((a, b) => (a.lastUse < b.lastUse ? a : b)));
     }
-    this.reserveScratch(scratch);
-    const at = this.heap.alloc(bytes);
-    if (real) f.realPlanInit(at, length, this.scratchAt);
-    else f.planInit(at, length, this.scratchAt);
-    this.cached += bytes;
-    return { at, bytes, scratch };
+    this.reserveScratch(plan.scratch);
+    plan.at = this.heap.alloc(plan.bytes);
+    if (real) f.realPlanInit(plan.at, length, this.scratchAt);
+    else f.planInit(plan.at, length, this.scratchAt);
+    this.bytes += plan.bytes;
+  }
+
+  private built(): WasmPlan[] {
+    return [...this.known.values()].filter((p) => p.at !== 0);
+  }
+
+  private drop(plan: WasmPlan): void {
+    this.heap.release(plan.at);
+    plan.at = 0;
+    this.bytes -= plan.bytes;
   }
 
   private reserveScratch(bytes: number): void {

@@ -6,6 +6,7 @@ import {
   type Precision,
   type Samples,
 } from '../complex-arrays';
+import { checkArrayLength } from '../kernels-backend';
 
 /** A kernel array on an ordinary typed array. */
 export class PlainArray<P extends Precision = Precision> implements KernelArray<P> {
@@ -56,6 +57,7 @@ export class PlainArray<P extends Precision = Precision> implements KernelArray<
 
 /** Array of `length` zeros. */
 export function plainArray<P extends Precision>(length: number, precision: P): PlainArray<P> {
+  checkArrayLength(length);
   const data = precision === 'f64' ? new Float64Array(length) : new Float32Array(length);
   return new PlainArray(precision, data as Samples<P>, true);
 }
