@@ -40,7 +40,7 @@ async function draw(): Promise<void> {
     still: true,
   };
   for (const box of document.querySelectorAll<HTMLElement>('[data-figure]')) {
-    const figure = figures[Number(box.dataset['figure'])];
+    const figure = figures.at(Number(box.dataset['figure']));
     const plot = box.querySelector<HTMLElement>('.plot');
     if (!figure || !plot) continue;
     const { data, layout } = toPlotly(figure, {}, theme);

@@ -10,7 +10,7 @@ const HEAP_MB = 1024;
 interface Live {
   readonly worker: Worker;
   readonly api: Client<EngineApi>;
-  close(reason: Error): void;
+  readonly close: (reason: Error) => void;
 }
 
 /**

@@ -29,8 +29,8 @@ export function makeSamples({ rate, seconds, parts, defects = [] }: CaseData): F
   for (const part of parts) {
     const add = part.kind === 'white' ? gaussianNoise(x.length, part.sigma, part.seed) : undefined;
     for (let i = 0; i < x.length; i++) {
-      x[i]! += add
-        ? add[i]!
+      x[i] += add
+        ? add[i]
         : part.kind === 'sine'
           ? part.amplitude * Math.sin((2 * Math.PI * part.frequency * i) / rate)
           : 0;
@@ -38,7 +38,7 @@ export function makeSamples({ rate, seconds, parts, defects = [] }: CaseData): F
   }
   for (const d of defects) {
     if (d.kind === 'missing') x.fill(NaN, d.from * rate, d.to * rate);
-    else for (let i = 0; i < x.length; i++) x[i] = Math.max(-d.at, Math.min(d.at, x[i]!));
+    else for (let i = 0; i < x.length; i++) x[i] = Math.max(-d.at, Math.min(d.at, x[i]));
   }
   return x;
 }

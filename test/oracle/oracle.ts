@@ -4,6 +4,7 @@ import { readFileSync } from 'node:fs';
 const here = new URL('.', import.meta.url).pathname;
 
 /** Numbers of `test/oracle/<topic>.json`, written by `<topic>.py` beside it with NumPy and SciPy. */
+// eslint-disable-next-line @typescript-eslint/no-unnecessary-type-parameters -- the caller knows what its generator writes
 export function oracle<T>(topic: string): T {
   return JSON.parse(readFileSync(`${here}${topic}.json`, 'utf8')) as T;
 }

@@ -50,7 +50,7 @@ test('errors keep their kind, code, place and stack', async () => {
   });
   const bug = await client.api.fail({ how: 'bug' }).catch((e: unknown) => e as Error);
   expect(bug).toMatchObject({ name: 'TypeError', message: 'a bug' });
-  expect((bug as Error).stack).toContain('rpc.test');
+  expect(bug.stack).toContain('rpc.test');
 });
 
 test('an abort reaches the server and ends the call as cancelled', async () => {

@@ -69,7 +69,7 @@ describe('Engine', () => {
       start: '1400000000',
       rateFrom: 'given in the recipe',
     });
-    expect(result.inputs[0]!.sha256).toMatch(/^[0-9a-f]{64}$/);
+    expect(result.inputs[0].sha256).toMatch(/^[0-9a-f]{64}$/);
     expect(card('noise').provenance).toMatchObject({
       step: 'noise-spectrum',
       params: { segment: 2, average: 'median' },
@@ -95,7 +95,7 @@ describe('Engine', () => {
     const first = await run(text);
     writeFileSync(join(folder, 'changing.npy'), npy(Float64Array.from({ length: 2 * rate }, (_, i) => -i)));
     const second = await run(text);
-    expect(second.result.inputs[0]!.sha256).not.toBe(first.result.inputs[0]!.sha256);
+    expect(second.result.inputs[0].sha256).not.toBe(first.result.inputs[0].sha256);
     expect(second.card('look').numbers).not.toEqual(first.card('look').numbers);
   });
 
@@ -186,12 +186,11 @@ describe('Engine', () => {
 
   test('a figure can be drawn again for another viewport until its result is gone', async () => {
     const { card } = await run(recipe([{ id: 'look', do: 'overview', of: ['data'] }]));
-    const call = { event: () => undefined, cancelled: () => false };
     const print = card('look').provenance!.fingerprint;
-    const zoomed = await engine.redraw({ fingerprint: print, viewport: { width: 100, x: [1, 2] } }, call);
-    expect(zoomed[0]!.x.range).toEqual([1, 2]);
-    await expect(
-      engine.redraw({ fingerprint: 'gone', viewport: { width: 100 } }, call),
-    ).rejects.toMatchObject({ code: 'evicted' });
+    const zoomed = await engine.redraw({ fingerprint: print, viewport: { width: 100, x: [1, 2] } });
+    expect(zoomed[0].x.range).toEqual([1, 2]);
+    await expect(engine.redraw({ fingerprint: 'gone', viewport: { width: 100 } })).rejects.toMatchObject({
+      code: 'evicted',
+    });
   });
 });

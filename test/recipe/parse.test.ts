@@ -26,7 +26,7 @@ describe('parseRecipe', () => {
     const text = good.replace('"start"', '"strat"');
     const [d] = parseRecipe(text).diagnostics;
     expect(d).toMatchObject({ code: 'unknown-key', suggestions: ['start'], line: 4, subject: 'alder' });
-    expect(text.slice(d!.from, d!.to)).toBe('"strat"');
+    expect(text.slice(d.from, d.to)).toBe('"strat"');
   });
 
   test.each([

@@ -24,7 +24,7 @@ export function parseGps(text: string | number): GpsTime {
   if (typeof text === 'number') return gpsTime(text);
   const m = /^\s*(-?)(\d{1,12})(?:\.(\d{0,9})\d*)?\s*$/.exec(text);
   if (!m) throw new RangeError(`"${text}" is not a GPS time: write seconds as 1400000000 or "1400000000.25"`);
-  const nanos = Number((m[3] ?? '').padEnd(9, '0'));
+  const nanos = Number((m.at(3) ?? '').padEnd(9, '0'));
   return m[1] === '-' ? gpsTime(-Number(m[2]), -nanos) : gpsTime(Number(m[2]), nanos);
 }
 

@@ -6,15 +6,15 @@ export function editDistance(a: string, b: string): number {
     const row = [i];
     for (let j = 1; j <= b.length; j++) {
       const same = a[i - 1] === b[j - 1] ? 0 : 1;
-      let d = Math.min(previous[j]! + 1, row[j - 1]! + 1, previous[j - 1]! + same);
+      let d = Math.min(previous[j] + 1, row[j - 1] + 1, previous[j - 1] + same);
       if (i > 1 && j > 1 && a[i - 1] === b[j - 2] && a[i - 2] === b[j - 1])
-        d = Math.min(d, before[j - 2]! + 1);
+        d = Math.min(d, before[j - 2] + 1);
       row.push(d);
     }
     before = previous;
     previous = row;
   }
-  return previous[b.length]!;
+  return previous[b.length];
 }
 
 /** Known names close enough to a mistyped one to be worth offering, best first, at most three. */

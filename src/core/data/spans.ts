@@ -30,15 +30,17 @@ export function complementSpans(spans: readonly Span[], length: number): Span[] 
 
 /** Common part of two lists of spans. */
 export function intersectSpans(a: readonly Span[], b: readonly Span[]): Span[] {
+  const p = normaliseSpans(a);
+  const q = normaliseSpans(b);
   const out: Span[] = [];
-  for (const p of normaliseSpans(a)) {
-    for (const q of normaliseSpans(b)) {
-      const from = Math.max(p.from, q.from);
-      const to = Math.min(p.to, q.to);
-      if (to > from) out.push({ from, to });
-    }
+  for (let i = 0, j = 0; i < p.length && j < q.length;) {
+    const from = Math.max(p[i].from, q[j].from);
+    const to = Math.min(p[i].to, q[j].to);
+    if (to > from) out.push({ from, to });
+    if (p[i].to < q[j].to) i++;
+    else j++;
   }
-  return normaliseSpans(out);
+  return out;
 }
 
 /** The part of `spans` inside `[from, to)`, re-based so that `from` becomes 0. */

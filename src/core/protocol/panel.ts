@@ -139,6 +139,8 @@ export type FromLookPage =
 /** What either page may ask for. */
 type Common =
   | { readonly type: 'copy'; readonly text: string; readonly what: string }
+  /** A picture as SVG text, to be saved where the user says; `name` is a suggestion without ending. */
+  | { readonly type: 'save-picture'; readonly name: string; readonly svg: string }
   | { readonly type: 'page-error'; readonly message: string };
 
 export interface DataState {

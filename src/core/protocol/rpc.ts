@@ -114,7 +114,7 @@ export function serve<T extends Api<T>>(port: Port, api: T): void {
 /** A caller for the API served at the other end of `port`. `close(reason)` fails every call that is still open. */
 export function connect<T extends Api<T>>(
   port: Port,
-): { readonly api: Client<T>; close(reason: Error): void } {
+): { readonly api: Client<T>; readonly close: (reason: Error) => void } {
   let next = 1;
   let closed: Error | undefined;
   const open = new Map<

@@ -47,7 +47,7 @@ export function diagnose(parsed: ParsedRecipe, steps: Readonly<Record<string, An
     );
   }
   for (const key of Object.keys(recipe.expect ?? {})) {
-    const id = key.split('.')[0]!;
+    const id = key.split('.')[0];
     if (recipe.steps.some((s) => s.id === id)) continue;
     const suggestions = nearestNames(
       id,
@@ -136,5 +136,5 @@ function kindOf(
   if (Object.hasOwn(recipe.inputs, name)) return 'series';
   const spec = recipe.steps.find((s) => s.id === name);
   if (!spec) return undefined;
-  return Object.hasOwn(steps, spec.do) ? steps[spec.do]!.gives : 'unknown';
+  return Object.hasOwn(steps, spec.do) ? steps[spec.do].gives : 'unknown';
 }

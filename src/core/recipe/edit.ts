@@ -105,8 +105,7 @@ function insert(text: string, value: unknown, at: number): TextChange[] {
 
 /** Several changes one after the other, given back as one that leads from the first text to the last. */
 function each(text: string, changes: readonly (readonly [JSONPath, unknown])[]): TextChange[] {
-  if (changes.length === 1)
-    return modify(text, changes[0]![0], changes[0]![1], { formattingOptions: FORMAT });
+  if (changes.length === 1) return modify(text, changes[0][0], changes[0][1], { formattingOptions: FORMAT });
   let now = text;
   for (const [path, value] of changes)
     now = applyEdits(now, modify(now, path, value, { formattingOptions: FORMAT }));

@@ -67,7 +67,7 @@ export class Engine implements EngineApi {
     this.#results = new ByteCache(host.cacheLimit);
   }
 
-  async describe({ file }: { file: string }, _call?: Call<never>): Promise<FileDescription> {
+  async describe({ file }: { file: string }): Promise<FileDescription> {
     await Promise.resolve();
     const open = this.#inputs.open(file);
     return { file, format: open.format, size: open.size, tree: open.tree, channels: open.channels };
@@ -151,10 +151,7 @@ export class Engine implements EngineApi {
     };
   }
 
-  async redraw(
-    { fingerprint: print, viewport }: RedrawRequest,
-    _call?: Call<Progress>,
-  ): Promise<readonly Figure[]> {
+  async redraw({ fingerprint: print, viewport }: RedrawRequest): Promise<readonly Figure[]> {
     await Promise.resolve();
     const kept = this.#results.get(print);
     if (!kept) throw new UserError('evicted', 'this result is no longer in memory; run the look again');
@@ -271,7 +268,7 @@ export class Engine implements EngineApi {
   ): RunResult {
     for (const spec of order) {
       if (cards.has(spec.id)) continue;
-      const title = Object.hasOwn(registry, spec.do) ? registry[spec.do]!.title : spec.do;
+      const title = Object.hasOwn(registry, spec.do) ? registry[spec.do].title : spec.do;
       const card: Card = {
         id: spec.id,
         do: spec.do,

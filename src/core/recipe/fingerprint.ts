@@ -1,6 +1,7 @@
 /** JSON with keys in order, so that equal values give equal text. BigInt and GPS times are kept as they are. */
 export function stableJson(value: unknown): string {
-  if (value === null || typeof value !== 'object') return JSON.stringify(value) ?? 'undefined';
+  if (value === null || typeof value !== 'object')
+    return value === undefined ? 'undefined' : JSON.stringify(value);
   if (Array.isArray(value)) return `[${value.map(stableJson).join(',')}]`;
   const entries = Object.entries(value).filter(([, v]) => v !== undefined);
   entries.sort(([a], [b]) => (a < b ? -1 : 1));

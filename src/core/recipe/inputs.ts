@@ -81,7 +81,7 @@ export class InputReader {
     const read = (a: number, b: number, into = new Float64Array(b - a)): Float64Array => {
       const view = into.length === b - a ? into : into.subarray(0, b - a);
       this.open(path).read(channel.name, from + a, from + b, view);
-      if (scale !== 1) for (let i = 0; i < view.length; i++) view[i]! *= scale;
+      if (scale !== 1) for (let i = 0; i < view.length; i++) view[i] *= scale;
       return view;
     };
     const length = to - from;
@@ -136,7 +136,7 @@ export class InputReader {
 function pickChannel(file: OpenFile, spec: InputSpec): ChannelFacts {
   const names = file.channels.map((c) => c.name);
   if (spec.channel === undefined) {
-    if (file.channels.length === 1) return file.channels[0]!;
+    if (file.channels.length === 1) return file.channels[0];
     if (names.length === 0)
       throw new UserError(
         'no-channel',

@@ -78,7 +78,8 @@ export class JsonTree {
   members(node: Node | undefined): Member[] {
     if (node?.type !== 'object') return [];
     return (node.children ?? []).flatMap((property) => {
-      const [keyNode, value] = property.children ?? [];
+      const keyNode = property.children?.at(0);
+      const value = property.children?.at(1);
       return keyNode && value ? [{ key: keyNode.value as string, value, keyNode }] : [];
     });
   }
@@ -122,10 +123,10 @@ export class JsonTree {
     let hi = starts.length - 1;
     while (lo < hi) {
       const mid = (lo + hi + 1) >> 1;
-      if (starts[mid]! <= offset) lo = mid;
+      if (starts[mid] <= offset) lo = mid;
       else hi = mid - 1;
     }
-    return { line: lo + 1, column: offset - starts[lo]! + 1 };
+    return { line: lo + 1, column: offset - starts[lo] + 1 };
   }
 }
 

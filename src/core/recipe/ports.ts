@@ -39,7 +39,7 @@ export function portProblem(
       return `${title} needs ${kindWords(port.kind)} in "of" (${port.help})`;
     }
   }
-  const extra = left[0];
+  const extra = left.at(0);
   return extra === undefined
     ? undefined
     : `${title} has no use for "${extra.name}", which is ${kindWords(extra.kind)}`;
@@ -54,7 +54,7 @@ export function bindInputs(names: readonly string[], values: readonly AnyData[])
     many,
     optional: (kind, nth = 0) => many(kind)[nth],
     one: (kind, nth = 0) => {
-      const value = many(kind)[nth];
+      const value = many(kind).at(nth);
       if (value === undefined)
         throw new Error(`no ${kind} number ${nth} among the inputs; ports were not checked`);
       return value;

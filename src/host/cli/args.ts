@@ -13,12 +13,19 @@ export interface Args {
   readonly options: ReadonlyMap<string, string>;
 }
 
+/** The one word a command takes; anything else is a wrong use. */
+export function onlyWord(args: Args, usage: string): string {
+  const word = args.words.at(0);
+  if (word === undefined || args.words.length > 1) throw new UserError('usage', `usage: fringeside ${usage}`);
+  return word;
+}
+
 /** Splits arguments into words and `--name value` or `--name=value` options. Unknown options name the nearest. */
 export function parseArgs(argv: readonly string[], known: readonly OptionSpec[]): Args {
   const words: string[] = [];
   const options = new Map<string, string>();
   for (let i = 0; i < argv.length; i++) {
-    const arg = argv[i]!;
+    const arg = argv[i];
     if (arg === '--') {
       words.push(...argv.slice(i + 1));
       break;
@@ -27,7 +34,9 @@ export function parseArgs(argv: readonly string[], known: readonly OptionSpec[])
       words.push(arg);
       continue;
     }
-    const [name = '', inline] = arg.slice(2).split(/=(.*)/s);
+    const parts = arg.slice(2).split(/=(.*)/s);
+    const name = parts[0];
+    const inline = parts.at(1);
     const spec = known.find((o) => o.name === name);
     if (!spec) {
       const names = known.map((o) => o.name);
@@ -39,7 +48,7 @@ export function parseArgs(argv: readonly string[], known: readonly OptionSpec[])
       options.set(name, '');
       continue;
     }
-    const value = inline ?? argv[++i];
+    const value = inline ?? argv.at(++i);
     if (value === undefined) throw new UserError('usage', `--${name} needs a value: --${name} ${spec.value}`);
     options.set(name, value);
   }

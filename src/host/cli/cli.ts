@@ -30,7 +30,7 @@ function help(command?: Command): string {
   return [
     `fringeside ${VERSION}: looks at strain data by recipes`,
     '',
-    ...COMMANDS.map((c) => `  fringeside ${c.usage.padEnd(width)}  ${c.help.split('\n')[0]!}`),
+    ...COMMANDS.map((c) => `  fringeside ${c.usage.padEnd(width)}  ${c.help.split('\n')[0]}`),
     '',
     'fringeside COMMAND --help tells more. Exit codes: 0 done, 1 numbers differ (verify), 2 wrong usage, recipe or data,',
     '3 a step failed, 70 an error in fringeside itself, 130 stopped.',
@@ -41,7 +41,8 @@ function help(command?: Command): string {
 /** Runs one command line; returns the exit code. A user's error is one line, a bug its stack. */
 export async function runCli(argv: readonly string[], world: World): Promise<number> {
   try {
-    const [name, ...rest] = argv;
+    const name = argv.at(0);
+    const rest = argv.slice(1);
     if (name === undefined || name === '--help' || name === 'help') {
       world.out(help());
       return name === undefined ? EXIT.user : EXIT.ok;

@@ -1,6 +1,6 @@
 import { join, resolve } from 'node:path';
-import { UserError } from '../../core/data/errors';
 import { writeDemo } from '../demo-files';
+import { onlyWord } from './args';
 import type { Command } from './cli';
 import { run } from './run';
 import { EXIT } from './world';
@@ -14,8 +14,7 @@ export const demo: Command = {
   help: 'writes the demo data of two invented sites and their recipe\nThe data are made up from a fixed seed and are the same on every machine.',
   options: [{ name: 'run', help: 'also run the recipe and write DIR/results/report.html' }],
   async run(args, world) {
-    const [dir, extra] = args.words;
-    if (dir === undefined || extra !== undefined) throw new UserError('usage', `usage: fringeside ${USAGE}`);
+    const dir = onlyWord(args, USAGE);
     const files = await writeDemo(resolve(world.cwd, dir));
     for (const f of files) world.err(`${f.written ? 'wrote' : 'kept'} ${join(dir, f.name)}\n`);
     if (!args.options.has('run')) return EXIT.ok;

@@ -31,9 +31,7 @@ export function columns(
   for (const row of rows) row.forEach((c, i) => (widths[i] = Math.max(widths[i] ?? 0, c.length)));
   const line = (row: readonly string[]): string =>
     row
-      .map((c, i) =>
-        right[i] === true ? c.padStart(widths[i]!) : i === row.length - 1 ? c : c.padEnd(widths[i]!),
-      )
+      .map((c, i) => (right[i] ? c.padStart(widths[i]) : i === row.length - 1 ? c : c.padEnd(widths[i])))
       .join('  ');
   return rows.map((r) => `${indent}${line(r).trimEnd()}\n`).join('');
 }

@@ -3,6 +3,7 @@ import { UserError } from '../../core/data/errors';
 import { addSamples, formatGps, utcText } from '../../core/data/gps-time';
 import type { ChannelFacts } from '../../core/formats/format';
 import { startingRecipe } from '../../core/recipe/starting-recipe';
+import { onlyWord } from './args';
 import type { Command } from './cli';
 import { columns, number } from './format';
 import { runRecipe } from './recipe-file';
@@ -22,8 +23,7 @@ export const overview: Command = {
     { name: 'json', help: 'print facts of the file as JSON, without the look' },
   ],
   async run(args, world) {
-    const [word, extra] = args.words;
-    if (word === undefined || extra !== undefined) throw new UserError('usage', `usage: fringeside ${USAGE}`);
+    const word = onlyWord(args, USAGE);
     const file = resolve(world.cwd, word);
     const engine = await world.engine();
     const facts = await engine.describe({ file }, quiet(world));

@@ -2,7 +2,7 @@ import { readFileSync, statSync } from 'node:fs';
 import { dirname, resolve } from 'node:path';
 import { UserError } from '../../core/data/errors';
 import type { Card, Diagnostic, RecipeText, RunEvent, RunResult } from '../../core/protocol/engine';
-import type { Args } from './args';
+import { onlyWord, type Args } from './args';
 import type { World } from './world';
 
 export interface RecipeFile extends RecipeText {
@@ -13,8 +13,7 @@ const MAX_RECIPE = 16 << 20;
 
 /** Reads the recipe named by the first word. */
 export function readRecipe(args: Args, world: World, usage: string): RecipeFile {
-  const [word, extra] = args.words;
-  if (word === undefined || extra !== undefined) throw new UserError('usage', `usage: fringeside ${usage}`);
+  const word = onlyWord(args, usage);
   const path = resolve(world.cwd, word);
   let stat;
   try {
@@ -46,7 +45,7 @@ export async function runRecipe(recipe: RecipeFile, world: World): Promise<RunRe
   return result;
 }
 
-function progressLine(world: World): { event(e: RunEvent): void; clear(): void } {
+function progressLine(world: World): { event: (e: RunEvent) => void; clear: () => void } {
   let width = 0;
   const show = (text: string): void => {
     if (!world.progress) return;

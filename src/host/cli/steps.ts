@@ -16,7 +16,7 @@ export const stepsCommand: Command = {
   help: 'lists the steps a recipe can use, or explains one',
   options: [],
   run(args, world) {
-    const [id] = args.words;
+    const id = args.words.at(0);
     if (id === undefined) {
       world.out(columns(Object.values(registry).map((s) => [s.id, s.group, s.summary])));
       return Promise.resolve(EXIT.ok);
@@ -60,8 +60,8 @@ export function paramNotes(p: Param): string {
   const notes: string[] = [];
   if ('unit' in p && p.unit !== '') notes.push(p.unit);
   if (p.kind === 'choice') notes.push(p.choices.join(' | '));
-  if ('min' in p && p.min !== undefined)
+  if ((p.kind === 'number' || p.kind === 'list') && p.min !== undefined)
     notes.push(`${p.kind === 'number' && p.exclusiveMin === true ? 'above' : 'from'} ${p.min}`);
-  if ('max' in p && p.max !== undefined) notes.push(`up to ${p.max}`);
+  if ((p.kind === 'number' || p.kind === 'list') && p.max !== undefined) notes.push(`up to ${p.max}`);
   return notes.length === 0 ? '' : `  (${notes.join(', ')})`;
 }

@@ -8,7 +8,7 @@ const ENTITIES: Readonly<Record<string, string>> = {
 
 /** Text made safe inside HTML elements and attributes: names in data files are not ours. */
 export function escapeHtml(text: string): string {
-  return text.replace(/[&<>"']/g, (c) => ENTITIES[c]!);
+  return text.replace(/[&<>"']/g, (c) => ENTITIES[c]);
 }
 
 /** HTML that is already safe. */
@@ -23,7 +23,7 @@ export function safe(
 ): Html {
   const text = (v: (typeof values)[number]): string =>
     typeof v === 'object' ? ('html' in v ? v.html : v.map((x) => x.html).join('')) : escapeHtml(String(v));
-  return { html: parts.reduce((all, part, i) => all + text(values[i - 1]!) + part) };
+  return { html: parts.reduce((all, part, i) => all + text(values[i - 1]) + part) };
 }
 
 /** JSON that cannot end the script element it stands in. Typed arrays become lists, NaN null, numbers 9 digits. */
