@@ -1,7 +1,7 @@
 #!/usr/bin/env node
 import { Engine } from '../../core/recipe/engine';
 import type { EngineApi } from '../../core/protocol/engine';
-import { nodeHost } from '../node-host';
+import { distFolder, nodeHost } from '../node-host';
 import { runCli } from './cli';
 import type { World } from './world';
 
@@ -24,6 +24,7 @@ const world: World = {
   progress: process.stderr.isTTY,
   columns: process.stdout.columns || 100,
   cwd: process.cwd(),
+  dist: distFolder(),
   engine: () => (engine ??= nodeHost().then((host) => new Engine(host))),
   cancelled: () => interrupted,
 };

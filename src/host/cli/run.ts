@@ -28,7 +28,7 @@ export const run: Command = {
       const folder = resolve(world.cwd, out);
       for (const [name, text] of [
         ['result.json', json],
-        ['report.html', reportHtml(recipe, result)],
+        ['report.html', reportHtml(recipe, result, world.dist)],
       ] as const) {
         writeAtomically(join(folder, name), text);
         world.err(`wrote ${join(out, name)}\n`);

@@ -11,6 +11,8 @@ export interface World {
   readonly progress: boolean;
   readonly columns: number;
   readonly cwd: string;
+  /** Folder of the built program, for the report's script and style. */
+  readonly dist: string;
   /** Starts the engine on first use: `steps` and `--help` need no readers or kernels. */
   engine(): Promise<EngineApi>;
   cancelled(): boolean;

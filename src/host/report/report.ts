@@ -3,16 +3,14 @@ import { basename, join } from 'node:path';
 import type { RunResult } from '../../core/protocol/engine';
 import type { RecipeFile } from '../cli/recipe-file';
 import { CAUTION } from '../cli/result-text';
-import { distFolder } from '../node-host';
 import { safe, scriptJson, type Html } from './html';
 import { cardSection, inputSection } from './sections';
 
 /**
  * One HTML file with everything in it: text, numbers and tables that need no script, figures that can be zoomed without
- * a network, and the recipe itself. Contains no time stamp, so the same result gives the same file.
+ * a network, and the recipe itself. `dist` holds the page's script and style. Contains no time stamp, so the same result gives the same file.
  */
-export function reportHtml(recipe: RecipeFile, result: RunResult): string {
-  const dist = distFolder();
+export function reportHtml(recipe: RecipeFile, result: RunResult, dist: string): string {
   const asset = (name: string): Html => ({
     html: readFileSync(join(dist, name), 'utf8').replace(/<\/script/gi, '<\\/script'),
   });
