@@ -1,13 +1,15 @@
 import * as vscode from 'vscode';
 import { convertTime } from './convert-time';
 import { DATA_VIEWS } from './data/data-editor';
-import { pickStep } from './look/add-step';
+import { addNamedStep, pickStep } from './look/add-step';
 import { isRecipe, LOOK_VIEW } from './look/documents';
 import type { LookSession } from './look/look-session';
 import type { Sessions } from './look/sessions';
 import type { Services } from './services';
 import { startLookOn } from './start-look';
 
+/** Commands generated in package.json, one per step: what follows is the step's id. */
+const ADD_STEP = 'addStep.';
 const ENDINGS = [
   'h5',
   'hdf5',
@@ -26,7 +28,11 @@ const ENDINGS = [
 ];
 
 /** All commands. Each takes what a menu passes, else the active editor, else asks. */
-export function registerCommands(services: Services, sessions: Sessions): vscode.Disposable[] {
+export function registerCommands(
+  services: Services,
+  sessions: Sessions,
+  contributed: readonly { readonly command: string }[],
+): vscode.Disposable[] {
   const register = (id: string, run: (...args: never[]) => unknown): vscode.Disposable =>
     vscode.commands.registerCommand(`fringeside.${id}`, async (...args: unknown[]) => {
       try {
@@ -71,6 +77,15 @@ export function registerCommands(services: Services, sessions: Sessions): vscode
       withLook((s) => s.cancel()),
     ),
     register('addStep', withLook(pickStep)),
+    ...contributed
+      .map(({ command }) => command.replace(/^fringeside\./, ''))
+      .filter((id) => id.startsWith(ADD_STEP))
+      .map((id) =>
+        register(
+          id,
+          withLook((s) => addNamedStep(s, id.slice(ADD_STEP.length))),
+        ),
+      ),
     register('convertTime', convertTime),
     register('showLog', () => services.log.show()),
   ];

@@ -9,12 +9,14 @@ export function convertTime(): void {
   const show = (text: string): void => {
     const instant = readInstant(text);
     if (instant) {
-      const { gps, utc, caution } = instant;
+      const { from, gps, utc, caution } = instant;
       const note = caution === undefined ? {} : { detail: caution };
-      pick.items = [
+      const items = [
         { label: gps, description: 'GPS seconds: Enter copies', alwaysShow: true, value: gps, ...note },
         { label: utc, description: 'UTC: Enter copies', alwaysShow: true, value: utc, ...note },
       ];
+      // First the scale that was asked for, which is the other one.
+      pick.items = from === 'gps' ? items.reverse() : items;
     } else if (text.trim() === '') pick.items = [];
     else pick.items = [{ label: `"${text}" is neither GPS seconds nor a UTC date`, alwaysShow: true }];
   };

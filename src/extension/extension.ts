@@ -17,6 +17,7 @@ export function activate(context: vscode.ExtensionContext): void {
   const sessions = new Sessions(services);
   const editorOptions = { supportsMultipleEditorsPerDocument: true };
   const data = new DataEditor(services);
+  const manifest = context.extension.packageJSON as { contributes: { commands: { command: string }[] } };
   context.subscriptions.push(
     log,
     engine,
@@ -24,7 +25,7 @@ export function activate(context: vscode.ExtensionContext): void {
     vscode.window.registerCustomEditorProvider(LOOK_VIEW, new LookEditor(services, sessions), editorOptions),
     new RecipeDiagnostics(services),
     statusBar(sessions),
-    ...registerCommands(services, sessions),
+    ...registerCommands(services, sessions, manifest.contributes.commands),
     // A folder that becomes trusted may be read from beyond its own files: looks that waited for it go on.
     vscode.workspace.onDidGrantWorkspaceTrust(() => {
       for (const s of sessions.all()) if (s.run.state === 'held') void s.runNow();

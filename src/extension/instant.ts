@@ -11,6 +11,8 @@ import { LEAP_SECONDS } from '../core/data/leap-seconds';
 
 /** An instant read from text, in both scales. */
 export interface Instant {
+  /** Scale the text was in. */
+  readonly from: 'gps' | 'utc';
   readonly gps: string;
   readonly utc: string;
   /** Set when leap seconds after the table's end could shift the UTC. */
@@ -24,12 +26,13 @@ const UTC = /^\s*(\d{4})-(\d\d)-(\d\d)(?:[T ](\d\d):(\d\d)(?::(\d\d)(?:\.(\d{1,9
  * Undefined when the text is neither or names no possible date.
  */
 export function readInstant(text: string): Instant | undefined {
-  const t = /^\s*-?\d+(\.\d*)?\s*$/.test(text) ? parseGps(text) : fromUtc(text);
+  const from = /^\s*-?\d+(\.\d*)?\s*$/.test(text) ? 'gps' : 'utc';
+  const t = from === 'gps' ? parseGps(text) : fromUtc(text);
   if (!t) return undefined;
   const caution = isPastLeapTable(t)
     ? `after the end of the leap-second table (${LEAP_SECONDS.version}): a leap second announced later would shift this`
     : undefined;
-  return { gps: formatGps(t), utc: utcText(t), ...(caution === undefined ? {} : { caution }) };
+  return { from, gps: formatGps(t), utc: utcText(t), ...(caution === undefined ? {} : { caution }) };
 }
 
 function fromUtc(text: string): GpsTime | undefined {

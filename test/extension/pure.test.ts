@@ -224,6 +224,7 @@ describe('instants', () => {
   ])('reads UTC %s as GPS %s', (utc, gps) => expect(readInstant(utc)?.gps).toBe(gps));
   it('reads GPS seconds and keeps nanoseconds', () => {
     expect(readInstant('1400000000.000000001')).toEqual({
+      from: 'gps',
       gps: '1400000000.000000001',
       utc: '2024-05-17T16:53:02.000000001Z',
     });

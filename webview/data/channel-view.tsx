@@ -91,6 +91,7 @@ export function ChannelView({ channel, host, views }: Props): JSX.Element {
           views={views}
           result={String(version)}
           onViewport={ask}
+          onPicture={(svg) => host.post({ type: 'save-picture', name: 'preview', svg })}
           onCopy={(text, what) => host.post({ type: 'copy', text, what })}
           onLeave={() => undefined}
           asText={asText}

@@ -2,6 +2,7 @@ import { useEffect, useId, useState } from 'preact/hooks';
 import type { JSX } from 'preact';
 import type { Figure, Viewport } from '../../src/core/figures/figure';
 import { Legend } from './legend';
+import { pictureOf } from './picture';
 import { Plot } from './plot';
 import { keyAction } from './keys';
 import type { Readout } from './readout';
@@ -21,6 +22,7 @@ interface Props {
   /** Asks for the figure thinned to another view; the answer comes as `redrawn`. */
   readonly onViewport: (viewport: Viewport) => void;
   readonly onCopy: (text: string, what: string) => void;
+  readonly onPicture: (svg: string) => void;
   readonly onLeave: () => void;
   /** Shown as text from the start, and told when that changes, so it survives a rebuilt page. */
   readonly asText: boolean;
@@ -87,6 +89,14 @@ export function FigureBox(p: Props): JSX.Element {
             onClick={() => views.set(viewKey, {})}
           >
             Reset zoom
+          </button>
+          <button
+            type="button"
+            class="text-button"
+            data-action="save-picture"
+            onClick={() => void pictureOf(figure, view).then(p.onPicture)}
+          >
+            Save picture
           </button>
           <button
             type="button"

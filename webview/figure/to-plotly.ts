@@ -172,7 +172,13 @@ function axisOf(axis: Axis, range: Range, theme: Theme, titled: boolean): Record
 /** Labels at whole decades where there are enough of them, else at 1, 2 and 5, with unlabelled ticks between. */
 function logTicks(decades: number, theme: Theme): Record<string, unknown> {
   const minor = { minor: { dtick: 'D1', ticks: 'outside', ticklen: 2, tickcolor: theme.muted } };
-  if (decades > 1.6) return { dtick: Math.ceil(decades / 8), ...(decades > 8 ? {} : minor) };
+  if (decades > 1.6)
+    return {
+      dtick: Math.ceil(decades / 8),
+      // The library writes powers of ten a quarter larger than other labels.
+      tickfont: { size: theme.fontSize / 1.25 },
+      ...(decades > 8 ? {} : minor),
+    };
   return decades > 0.4 ? { dtick: 'D2', ...minor } : {};
 }
 

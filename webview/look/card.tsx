@@ -105,6 +105,7 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
                         })
                       }
                       onCopy={copy}
+                      onPicture={(svg) => post({ type: 'save-picture', name: `${id}-${f.id}`, svg })}
                       onLeave={toCard}
                       asText={isOpen('asText', key)}
                       onAsText={(on) => setOpen('asText', key, on)}

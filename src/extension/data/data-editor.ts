@@ -45,28 +45,33 @@ export class DataEditor implements vscode.CustomReadonlyEditorProvider<DataDocum
         return { ...head, error: cardError(e) };
       }
     };
-    const channel: DataChannel = new PageChannel(panel.webview, this.#services, (message: FromDataPage) => {
-      switch (message.type) {
-        case 'ready':
-          if (state === undefined) void refresh();
-          else channel.post({ type: 'data', state });
-          break;
-        case 'preview':
-          preview?.abort();
-          preview = new AbortController();
-          void this.#preview(file, channel, message, preview.signal);
-          break;
-        case 'start-look': {
-          const facts = state?.description?.channels.find((c) => c.name === message.channel);
-          if (!facts) break;
-          const { answers, span } = message;
-          const start = { file, channel: facts, answers, ...(span ? { span } : {}) };
-          openLook([start], this.#services).then(undefined, (e: unknown) => {
-            void vscode.window.showErrorMessage(`No look was started: ${cardError(e).message}`);
-          });
+    const channel: DataChannel = new PageChannel(
+      panel.webview,
+      uri,
+      this.#services,
+      (message: FromDataPage) => {
+        switch (message.type) {
+          case 'ready':
+            if (state === undefined) void refresh();
+            else channel.post({ type: 'data', state });
+            break;
+          case 'preview':
+            preview?.abort();
+            preview = new AbortController();
+            void this.#preview(file, channel, message, preview.signal);
+            break;
+          case 'start-look': {
+            const facts = state?.description?.channels.find((c) => c.name === message.channel);
+            if (!facts) break;
+            const { answers, span } = message;
+            const start = { file, channel: facts, answers, ...(span ? { span } : {}) };
+            openLook([start], this.#services).then(undefined, (e: unknown) => {
+              void vscode.window.showErrorMessage(`No look was started: ${cardError(e).message}`);
+            });
+          }
         }
-      }
-    });
+      },
+    );
     const refresh = async (): Promise<void> => {
       state = await read();
       channel.post({ type: 'data', state });

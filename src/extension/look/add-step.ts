@@ -43,3 +43,17 @@ export async function pickStep(session: LookSession): Promise<void> {
   });
   if (picked) await addStep(session, { do: picked.step.do, of: picked.step.of });
 }
+
+/** Adds a step by name, with the newest data of each kind it takes; says what is missing when there is none. */
+export async function addNamedStep(session: LookSession, name: string): Promise<void> {
+  const fit = session.recipe && addableSteps(session.recipe, session.steps).find((a) => a.do === name);
+  if (fit) {
+    await addStep(session, { do: fit.do, of: fit.of });
+    return;
+  }
+  const takes = session.steps.find((s) => s.id === name)?.takes.filter((p) => p.count !== 'optional') ?? [];
+  const needs = takes.map((p) => `${p.kind} (${p.help})`).join(' and ');
+  void vscode.window.showWarningMessage(
+    `${name} was not added: the recipe has nothing to feed it. It needs ${needs}.`,
+  );
+}

@@ -22,13 +22,21 @@ export class LookEditor implements vscode.CustomTextEditorProvider {
 
   resolveCustomTextEditor(document: vscode.TextDocument, panel: vscode.WebviewPanel): void {
     const session = this.#sessions.acquire(document);
-    const channel: LookChannel = new PageChannel(panel.webview, this.#services, (message: FromLookPage) => {
-      void this.#answer(session, channel, message);
-    });
+    const channel: LookChannel = new PageChannel(
+      panel.webview,
+      document.uri,
+      this.#services,
+      (message: FromLookPage) => {
+        void this.#answer(session, channel, message);
+      },
+    );
     const subscriptions = [
       channel.subscription,
       session.onDidChange((change) => {
         switch (change.type) {
+          case 'all':
+            channel.post({ type: 'look', state: session.state() });
+            break;
           case 'outline':
             channel.post({ type: 'outline', outline: session.outline() });
             break;

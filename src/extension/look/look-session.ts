@@ -19,6 +19,8 @@ const QUIET_MS = 150;
 const DEFAULT_WIDTH = 900;
 
 export type LookChange =
+  /** Too much to tell apart: send the whole state. */
+  | { readonly type: 'all' }
   | { readonly type: 'outline' }
   | { readonly type: 'card'; readonly id: string }
   | { readonly type: 'progress'; readonly id: string; readonly fraction: number; readonly note?: string };
@@ -77,7 +79,8 @@ export class LookSession implements vscode.Disposable {
       this.#break(e);
       return;
     }
-    this.#changed.fire({ type: 'outline' });
+    // Forms are made from the steps, which a page that was ready before the engine has not got.
+    this.#changed.fire({ type: 'all' });
     await this.runNow();
   }
 

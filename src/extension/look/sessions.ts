@@ -22,6 +22,8 @@ export class Sessions {
 
   activate(session: LookSession | undefined): void {
     this.#active = session;
+    // Commands that add a step are offered in the palette only while there is a look to add it to.
+    void vscode.commands.executeCommand('setContext', 'fringeside.lookActive', session !== undefined);
     this.#changed.fire();
   }
 
