@@ -17,11 +17,9 @@ export function statusBar(sessions: Sessions): vscode.Disposable {
         item.tooltip = 'Fringeside is running this look. Click to cancel.';
         item.command = 'fringeside.cancelRun';
       } else {
-        const failed = heads.filter((h) => h.state === 'failed' || h.state === 'blocked').length;
-        const bad = problems.length > 0 || failed > 0;
-        item.text = bad
-          ? `$(warning) ${failed + problems.length} to mend`
-          : `$(graph-line) ${done} of ${heads.length} steps`;
+        // A step that is wrong in the text fails too, and is counted once.
+        const bad = Math.max(problems.length, heads.filter((h) => h.state === 'failed').length);
+        item.text = bad > 0 ? `$(warning) ${bad} to mend` : `$(graph-line) ${done} of ${heads.length} steps`;
         item.tooltip = 'Fringeside look. Click to run it again.';
         item.command = 'fringeside.runLook';
       }

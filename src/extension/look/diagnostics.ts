@@ -73,16 +73,30 @@ function suggest(
   _range: vscode.Range,
   context: vscode.CodeActionContext,
 ): vscode.CodeAction[] {
-  return context.diagnostics.flatMap((d) =>
-    (SUGGESTIONS.get(d) ?? []).map((name, i) => {
+  return context.diagnostics.flatMap((d) => {
+    const target = wrongName(document, d);
+    if (!target) return [];
+    return (SUGGESTIONS.get(d) ?? []).map((name, i) => {
       const action = new vscode.CodeAction(`Change to "${name}"`, vscode.CodeActionKind.QuickFix);
       action.edit = new vscode.WorkspaceEdit();
-      action.edit.replace(document.uri, d.range, JSON.stringify(name));
+      action.edit.replace(document.uri, target, JSON.stringify(name));
       action.diagnostics = [d];
       action.isPreferred = i === 0;
       return action;
-    }),
-  );
+    });
+  });
+}
+
+/** Place of the name that is wrong: the marked text, or the key before it where the mark is on a parameter's value. */
+function wrongName(document: vscode.TextDocument, d: vscode.Diagnostic): vscode.Range | undefined {
+  const text = document.getText();
+  const start = document.offsetAt(d.range.start);
+  const onKey = /^\s*:/.test(text.slice(document.offsetAt(d.range.end)));
+  if (d.code !== 'unknown-parameter' || onKey) return text[start] === '"' ? d.range : undefined;
+  const key = /"(?:[^"\\]|\\.)*"(?=\s*:\s*$)/.exec(text.slice(0, start));
+  if (!key) return undefined;
+  const end = key.index + key[0].length;
+  return new vscode.Range(document.positionAt(key.index), document.positionAt(end));
 }
 
 function toEditor(document: vscode.TextDocument, d: Diagnostic): vscode.Diagnostic {
