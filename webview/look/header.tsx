@@ -94,15 +94,18 @@ function Input({ input }: { readonly input: InputView }): JSX.Element {
           <div>
             <dt>span, GPS</dt>
             <dd title={`start: ${facts.startFrom}`}>
-              {facts.start} to {end?.gps} <span class="muted">({secondsText(facts.duration)})</span>
+              {facts.startKnown ? `${facts.start} to ${end?.gps ?? ''}` : 'start not known'}{' '}
+              <span class="muted">({secondsText(facts.duration)})</span>
             </dd>
           </div>
-          <div>
-            <dt>span, UTC</dt>
-            <dd>
-              {utcOf(facts.start)} to {end?.utc}
-            </dd>
-          </div>
+          {facts.startKnown && (
+            <div>
+              <dt>span, UTC</dt>
+              <dd>
+                {utcOf(facts.start)} to {end?.utc}
+              </dd>
+            </div>
+          )}
           <div>
             <dt>samples</dt>
             <dd title={`rate: ${facts.rateFrom}`}>

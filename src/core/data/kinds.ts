@@ -17,6 +17,8 @@ export interface Series {
   /** Hz */
   readonly rate: number;
   readonly start: GpsTime;
+  /** The file does not say when it was taken: `start` counts from GPS 0 and means nothing. */
+  readonly startUnknown?: boolean;
   readonly length: number;
   /** Runs of samples that are finite and meant to be used; everything else must not enter a result. */
   readonly valid: readonly Span[];

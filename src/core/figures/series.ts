@@ -23,7 +23,8 @@ export interface SeriesFigureOptions {
  */
 export function seriesFigure(series: Series, viewport: Viewport, options: SeriesFigureOptions = {}): Figure {
   const seconds = series.length / series.rate;
-  const x = timeAxis(series.start, seconds, viewport);
+  const gps = timeAxis(series.start, seconds, viewport);
+  const x = series.startUnknown === true ? { ...gps, label: 'Time after the first sample' } : gps;
   const columns = columnsOf(x, viewport);
   const trace = thinSeries(series, columns);
   const spoilt = series.spoilt ?? [];

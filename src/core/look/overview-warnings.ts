@@ -21,6 +21,7 @@ export function overviewWarnings(series: Series, scan: SeriesScan): Warning[] {
     ...zeros(series, scan),
     ...counts(series, scan),
     ...rate(series),
+    ...start(series),
     ...small(series, scan),
   ];
   const order = { problem: 0, caution: 1, note: 2 };
@@ -37,6 +38,19 @@ function empty(series: Series, { used }: SeriesScan): Warning[] {
       value: series.length,
       consequence: 'Nothing can be computed from this span.',
       remedy: 'Choose another span or channel.',
+    },
+  ];
+}
+
+function start(series: Series): Warning[] {
+  if (series.startUnknown !== true) return [];
+  return [
+    {
+      code: 'start-unknown',
+      severity: 'note',
+      found: 'the file does not say when its first sample was taken',
+      consequence: 'Times count from GPS 0 and mean only the distance from the first sample.',
+      remedy: 'Give the GPS time of the first sample as "epoch" of the input.',
     },
   ];
 }

@@ -64,6 +64,7 @@ export interface RunRequest extends RecipeText {
 export type RunEvent =
   | { readonly type: 'waiting'; readonly ids: readonly string[] }
   | { readonly type: 'running'; readonly id: string; readonly fraction: number; readonly note?: string }
+  | { readonly type: 'input'; readonly input: InputProvenance }
   | { readonly type: 'card'; readonly card: Card };
 
 export interface RunResult {
@@ -126,6 +127,8 @@ export interface InputProvenance {
   readonly rateFrom: string;
   readonly start: string;
   readonly startFrom: string;
+  /** False when neither the file nor the recipe says the start: times then count from GPS 0. */
+  readonly startKnown: boolean;
   readonly samples: number;
   readonly duration: number;
   /** SHA-256 over the samples used, each as little-endian float64 (NaN as 7ff8000000000000), so it does not depend on the container. */

@@ -67,6 +67,7 @@ function checkParams(parsed: ParsedRecipe, spec: StepSpec, i: number, step: AnyS
   for (const [key, raw] of Object.entries(spec.params)) {
     const param = Object.hasOwn(step.params, key) ? step.params[key] : undefined;
     const where = parsed.tree.at(['steps', i, key]);
+
     if (!param) {
       const suggestions = nearestNames(key, [...known, ...STEP_KEYS]);
       const all =
@@ -75,10 +76,15 @@ function checkParams(parsed: ParsedRecipe, spec: StepSpec, i: number, step: AnyS
           : known.length > 0
             ? ` It knows: ${known.join(', ')}.`
             : '';
-      parsed.tree.report(where, 'unknown-parameter', `${step.id} has no parameter "${key}".${all}`, {
-        suggestions,
-        subject: spec.id,
-      });
+      parsed.tree.report(
+        parsed.tree.atKey(['steps', i], key),
+        'unknown-parameter',
+        `${step.id} has no parameter "${key}".${all}`,
+        {
+          suggestions,
+          subject: spec.id,
+        },
+      );
       continue;
     }
     const check = checkParam(param, raw);

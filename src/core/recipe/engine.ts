@@ -29,7 +29,7 @@ import { fingerprint } from './fingerprint';
 import { InputReader, type PreparedInput } from './inputs';
 import { dependencyOrder, withNeeds } from './order';
 import { parseRecipe, type ParsedRecipe } from './parse';
-import { previewFigure } from './preview';
+import { previewFigure, previewSeries, type Previewed, type PreviewRead } from './preview';
 import { bindInputs } from './ports';
 import type { StepSpec } from './recipe';
 
@@ -37,6 +37,9 @@ const registry: Readonly<Record<string, AnyStep>> = steps;
 /** Longest a run keeps other requests waiting, and shortest time between two progress events. */
 const BREATH_MS = 12;
 const EVENT_MS = 60;
+/** Channels whose envelope is kept for zooming in the data view, and what one takes. */
+const PREVIEWS = 16;
+const PREVIEW_BYTES = 2 << 20;
 
 interface Kept {
   readonly outcome: StepOutcome;
@@ -60,6 +63,7 @@ export class Engine implements EngineApi {
   readonly #host: EngineHost;
   readonly #inputs: InputReader;
   readonly #results: ByteCache<Kept>;
+  readonly #previews = new ByteCache<Previewed>(PREVIEWS * PREVIEW_BYTES);
 
   constructor(host: EngineHost) {
     this.#host = host;
@@ -73,9 +77,19 @@ export class Engine implements EngineApi {
     return { file, format: open.format, size: open.size, tree: open.tree, channels: open.channels };
   }
 
-  preview(request: PreviewRequest, call: Call<Progress>): Promise<Figure> {
+  async preview(request: PreviewRequest, call: Call<Progress>): Promise<Figure> {
     const open = this.#inputs.open(request.file);
-    return previewFigure(open, request, (fraction) => this.#pause(call, () => call.event({ fraction })));
+    const key = JSON.stringify([this.#host.stamp(request.file), request.channel, request.rate]);
+    let preview = this.#previews.get(key);
+    if (!preview) {
+      const read: PreviewRead = (from, to, into) =>
+        this.#inputs.open(request.file).read(request.channel, from, to, into);
+      preview = await previewSeries(open, request, read, (fraction) =>
+        this.#pause(call, () => call.event({ fraction })),
+      );
+      this.#previews.set(key, preview, PREVIEW_BYTES);
+    }
+    return previewFigure(preview, request.viewport);
   }
 
   steps(): Promise<readonly StepDescription[]> {
@@ -129,6 +143,7 @@ export class Engine implements EngineApi {
         const input: PreparedInput = await this.#inputs.prepare(name, spec, request.folder, report);
         values.set(name, { data: input.series, print: input.fingerprint });
         provenance.push(input.provenance);
+        call.event({ type: 'input', input: input.provenance });
       } catch (e) {
         if (e instanceof CancelledError) return this.#stopped(order, cards, parsed, provenance, call);
         failures.set(name, { ...cardError(e), input: name });

@@ -69,7 +69,7 @@ export class InputReader {
     const file = this.open(path);
     const channel = pickChannel(file, spec);
     const { rate, rateFrom } = rateOf(file, channel, spec);
-    const { start: epoch, startFrom } = epochOf(channel, spec);
+    const { start: epoch, startFrom, startKnown } = epochOf(channel, spec);
     const { from, to } = spanOf(file, channel, spec, rate, epoch);
     const print = fingerprint(this.#host.hasher(), [
       this.#host.stamp(path),
@@ -105,6 +105,7 @@ export class InputReader {
       unit: spec.unit ?? channel.unit?.value ?? '',
       rate,
       start,
+      ...(startKnown ? {} : { startUnknown: true }),
       length,
       valid: scan.valid,
       scan,
@@ -120,6 +121,7 @@ export class InputReader {
       rateFrom,
       start: formatGps(start),
       startFrom,
+      startKnown,
       samples: length,
       duration: length / rate,
       sha256: scan.sha256,
@@ -167,13 +169,17 @@ function rateOf(file: OpenFile, channel: ChannelFacts, spec: InputSpec): { rate:
 }
 
 /** A channel without a start time counts from zero, and says so. */
-function epochOf(channel: ChannelFacts, spec: InputSpec): { start: GpsTime; startFrom: string } {
-  if (spec.epoch !== undefined) return { start: parseGps(spec.epoch), startFrom: 'given in the recipe' };
+function epochOf(
+  channel: ChannelFacts,
+  spec: InputSpec,
+): { start: GpsTime; startFrom: string; startKnown: boolean } {
+  if (spec.epoch !== undefined)
+    return { start: parseGps(spec.epoch), startFrom: 'given in the recipe', startKnown: true };
   if (channel.start) {
     const late = isPastLeapTable(channel.start.value) ? '; later than the leap-second table knows' : '';
-    return { start: channel.start.value, startFrom: channel.start.where + late };
+    return { start: channel.start.value, startFrom: channel.start.where + late, startKnown: true };
   }
-  return { start: gpsTime(0), startFrom: 'not in the file: counted from 0' };
+  return { start: gpsTime(0), startFrom: 'not in the file: counted from GPS 0', startKnown: false };
 }
 
 /** Sample indices `[from, to)` of the span the recipe asks for. */

@@ -75,6 +75,13 @@ export class JsonTree {
     return this.range(this.root);
   }
 
+  /** Range of the key `key` of the object at `path`. */
+  atKey(path: readonly (string | number)[], key: string): TextRange {
+    const node = this.root && findNodeAtLocation(this.root, [...path]);
+    const member = this.members(node).find((m) => m.key === key);
+    return member ? this.range(member.keyNode) : this.at(path);
+  }
+
   members(node: Node | undefined): Member[] {
     if (node?.type !== 'object') return [];
     return (node.children ?? []).flatMap((property) => {

@@ -2,35 +2,43 @@ import { UserError } from '../data/errors';
 import { gpsTime } from '../data/gps-time';
 import type { Series } from '../data/kinds';
 import { emptyEnvelope, foldEnvelope, keepEnvelope } from '../figures/envelope';
-import type { Figure } from '../figures/figure';
+import type { Figure, Viewport } from '../figures/figure';
 import { seriesFigure } from '../figures/series';
 import type { OpenFile } from '../formats/format';
 import type { PreviewRequest } from '../protocol/engine';
 
 const BLOCK = 1 << 18;
 
-/** Picture of a whole channel before any look exists: smallest and largest sample per pixel column, read block by block. */
-export async function previewFigure(
+export interface Previewed {
+  readonly series: Series;
+  readonly rateKnown: boolean;
+}
+
+export type PreviewRead = (from: number, to: number, into: Float64Array) => void;
+
+/** A whole channel as a series with its envelope, read once block by block, before any look exists. */
+export async function previewSeries(
   file: OpenFile,
   request: PreviewRequest,
+  read: PreviewRead,
   block: (fraction: number) => Promise<void>,
-): Promise<Figure> {
+): Promise<Previewed> {
   const channel = file.channels.find((c) => c.name === request.channel);
   if (!channel)
     throw new UserError('no-channel', `${file.name} has no channel "${request.channel}"`, file.name);
-  const rate = request.rate ?? channel.rate?.value;
   const series: Series = {
     kind: 'series',
     label: channel.name,
     channel: channel.name,
     unit: channel.unit?.value ?? '',
-    // Without a rate the axis counts samples, and its label says so.
-    rate: rate ?? 1,
+    // Without a rate the axis counts samples; previewFigure says so.
+    rate: request.rate ?? channel.rate?.value ?? 1,
     start: channel.start?.value ?? gpsTime(0),
+    ...(channel.start ? {} : { startUnknown: true }),
     length: channel.length,
     valid: channel.runs ?? [{ from: 0, to: channel.length }],
     read: (from, to, into = new Float64Array(to - from)) => {
-      file.read(channel.name, from, to, into);
+      read(from, to, into);
       return into;
     },
   };
@@ -42,7 +50,12 @@ export async function previewFigure(
     foldEnvelope(envelope, series.read(from, to, buffer.subarray(0, to - from)), to - from, from);
   }
   keepEnvelope(series, envelope);
-  const figure = seriesFigure(series, request.viewport, { id: 'preview', title: channel.name });
-  if (rate !== undefined) return figure;
+  return { series, rateKnown: (request.rate ?? channel.rate) !== undefined };
+}
+
+/** Picture of a previewed channel: smallest and largest sample per pixel column of the viewport. */
+export function previewFigure({ series, rateKnown }: Previewed, viewport: Viewport): Figure {
+  const figure = seriesFigure(series, viewport, { id: 'preview', title: series.label });
+  if (rateKnown) return figure;
   return { ...figure, x: { ...figure.x, label: 'Sample number (no sample rate found)', unit: '' } };
 }

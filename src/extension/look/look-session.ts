@@ -153,6 +153,10 @@ export class LookSession implements vscode.Disposable {
           signal: abort.signal,
           onEvent: (event) => {
             if (!mine()) return;
+            if (event.type === 'input') {
+              this.#inputs = [...this.#inputs.filter((i) => i.name !== event.input.name), event.input];
+              this.#changed.fire({ type: 'outline' });
+            }
             const change = this.#results.apply(event);
             if (event.type === 'running' && this.#results.head(event.id, false).state === 'running')
               this.#changed.fire({ ...event, type: 'progress' });

@@ -50,6 +50,8 @@ export class Results {
         this.#of(event.id).live = { state: 'running', fraction, ...(note === undefined ? {} : { note }) };
         return { heads: false };
       }
+      case 'input':
+        return { heads: false };
       case 'card':
         return this.#take(event.card);
     }

@@ -23,7 +23,7 @@ function inputText(i: InputProvenance): string {
       ? 'no gaps'
       : `${i.gaps.length} gap${i.gaps.length === 1 ? '' : 's'}, ${number(i.gaps.reduce((s, g) => s + g.seconds, 0))} s in all`;
   return [
-    `input ${i.name}: ${i.file} ${i.channel}, ${i.samples} samples at ${number(i.rate)} Hz from GPS ${i.start}, ${gaps}\n`,
+    `input ${i.name}: ${i.file} ${i.channel}, ${i.samples} samples at ${number(i.rate)} Hz ${i.startKnown ? `from GPS ${i.start}` : 'with unknown start'}, ${gaps}\n`,
     `  rate: ${i.rateFrom}; start: ${i.startFrom}; SHA-256 of the samples ${i.sha256.slice(0, 16)}…\n`,
   ].join('');
 }

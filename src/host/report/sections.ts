@@ -11,7 +11,10 @@ export function inputSection(i: InputProvenance): Html {
     i.gaps.length === 0 ? 'none' : i.gaps.map((g) => `${number(g.seconds)} s from GPS ${g.start}`).join('; ');
   const rows: readonly (readonly [string, string])[] = [
     ['File', `${i.file} (${i.format}), channel ${i.channel}`],
-    ['Span', `GPS ${i.start} (${utcText(parseGps(i.start))}), ${number(i.duration)} s, ${i.samples} samples`],
+    [
+      'Span',
+      `${i.startKnown ? `GPS ${i.start} (${utcText(parseGps(i.start))}), ` : 'start not known, '}${number(i.duration)} s, ${i.samples} samples`,
+    ],
     ['Sample rate', `${number(i.rate)} Hz, from ${i.rateFrom}`],
     ['Start', `from ${i.startFrom}`],
     ['Unit', i.unit === '' ? 'not stated' : i.unit],
