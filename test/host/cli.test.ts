@@ -108,6 +108,21 @@ describe('run', () => {
     expect(result.inputs[0].sha256).toMatch(/^[0-9a-f]{64}$/);
   });
 
+  test('--workers gives the same numbers, and says what it takes', async () => {
+    interface Result {
+      steps: { numbers: unknown }[];
+    }
+    const numbers = async (...more: string[]): Promise<unknown> =>
+      (JSON.parse((await cli('run', 'good.fringe.json', '--json', ...more)).out) as Result).steps.map(
+        (s) => s.numbers,
+      );
+    expect(await numbers('--workers', '2')).toEqual(await numbers());
+    expect(await cli('run', 'good.fringe.json', '--workers', '0')).toMatchObject({
+      code: 2,
+      err: expect.stringContaining('--workers must be') as string,
+    });
+  });
+
   test('--out writes the result and a report that holds everything, and the same again the second time', async () => {
     await cli('run', 'good.fringe.json', '--out', 'results');
     const path = join(folder, 'results', 'report.html');

@@ -4,6 +4,7 @@ import { UserError } from '../../core/data/errors';
 import type { Card, Diagnostic, RecipeText, RunEvent, RunResult } from '../../core/protocol/engine';
 import { onlyWord, type Args } from './args';
 import type { World } from './world';
+import { WorkerPool } from '../worker-pool';
 
 export interface RecipeFile extends RecipeText {
   readonly path: string;
@@ -36,13 +37,38 @@ export const diagnosticLine = (path: string, d: Diagnostic): string =>
   `${path}:${d.line}:${d.column}: ${d.severity}: ${d.message}\n`;
 
 /** Runs a recipe with a progress line on stderr; problems of the recipe are printed with their positions. */
-export async function runRecipe(recipe: RecipeFile, world: World): Promise<RunResult> {
-  const engine = await world.engine();
+export async function runRecipe(recipe: RecipeFile, world: World, workers = 1): Promise<RunResult> {
   const { event, clear } = progressLine(world);
-  const result = await engine.run(recipe, { event, cancelled: () => world.cancelled() });
+  const result =
+    workers > 1 ? await onPool(recipe, world, workers, event) : await inProcess(recipe, world, event);
   clear();
   for (const d of result.diagnostics) world.err(diagnosticLine(recipe.path, d));
   return result;
+}
+
+async function inProcess(recipe: RecipeFile, world: World, event: (e: RunEvent) => void): Promise<RunResult> {
+  const engine = await world.engine();
+  return engine.run(recipe, { event, cancelled: () => world.cancelled() });
+}
+
+async function onPool(
+  recipe: RecipeFile,
+  world: World,
+  workers: number,
+  onEvent: (e: RunEvent) => void,
+): Promise<RunResult> {
+  const pool = new WorkerPool(world.dist, workers);
+  const abort = new AbortController();
+  // An interrupt sets a flag, which a thread at work does not see.
+  const watch = setInterval(() => {
+    if (world.cancelled()) abort.abort();
+  }, 50);
+  try {
+    return await pool.run({ text: recipe.text, folder: recipe.folder }, { onEvent, signal: abort.signal });
+  } finally {
+    clearInterval(watch);
+    await pool.dispose();
+  }
 }
 
 function progressLine(world: World): { event: (e: RunEvent) => void; clear: () => void } {
