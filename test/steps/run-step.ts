@@ -4,6 +4,7 @@ import { createKernels, type Kernels } from '../../src/core/kernels/kernels';
 import { checkParam } from '../../src/core/protocol/param-check';
 import { bindInputs, portProblem } from '../../src/core/recipe/ports';
 import type { DataKind } from '../../src/core/data/kinds';
+import { siteNamed, type Site } from '../../src/core/sites/sites';
 import type { ParamSpecs, ParamValues, Step, StepOutcome } from '../../src/core/steps/define';
 
 /** The plain kernels: these tests are about the steps; that both kernels agree is tested with the kernels. */
@@ -29,6 +30,7 @@ export async function runStep<O extends DataKind, S extends ParamSpecs>(
     memoryLimit?: number;
     files?: Readonly<Record<string, string>>;
     kernels?: Kernels;
+    sites?: readonly Site[];
     /** Called at each block; a throw ends the run as a cancel does. */
     onBlock?: () => void;
   } = {},
@@ -59,6 +61,7 @@ export async function runStep<O extends DataKind, S extends ParamSpecs>(
       if (text === undefined) throw new Error(`no file ${path}`);
       return text;
     },
+    site: (name) => siteNamed(options.sites ?? [], name, 'test.sites.json'),
     block: async () => {
       blocks++;
       options.onBlock?.();

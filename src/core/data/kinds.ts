@@ -173,6 +173,84 @@ export interface FrequencyStatistic {
   readonly probability: number;
 }
 
+/** Complex signal-to-noise ratio against time for one template, one value per sample of the series it came from. */
+export interface SnrSeries {
+  readonly kind: 'snr';
+  readonly label: string;
+  readonly channel: string;
+  /** Hz */
+  readonly rate: number;
+  readonly start: GpsTime;
+  readonly startUnknown?: boolean;
+  readonly length: number;
+  /** (s|h)/σ for both phases of the template: in Gaussian noise each part has mean 0 and variance 1. NaN outside `valid`. */
+  readonly re: Float64Array;
+  readonly im: Float64Array;
+  readonly valid: readonly Span[];
+  /** Samples whose value would rest on data beyond an edge. */
+  readonly spoilt: readonly Span[];
+  readonly notes?: readonly string[];
+  readonly template: SnrTemplate;
+  readonly filter: SnrFilter;
+}
+
+/** The template of an `SnrSeries`; the time of a value is that of the template's t = 0. */
+export interface SnrTemplate {
+  readonly label: string;
+  /** σ = √(h|h) at `distance`. */
+  readonly sigma: number;
+  /** Mpc; absent when the template has an amplitude of its own. */
+  readonly distance?: number;
+}
+
+/** All that is needed to take the filter apart again: χ² bands, expected shape of the peak. */
+export interface SnrFilter {
+  readonly series: Series;
+  /** Samples per block; bins every rate / size Hz, size / 2 + 1 of them. */
+  readonly size: number;
+  /** h̃(f) in strain/Hz, t = 0 at the first sample. */
+  readonly re: Float64Array;
+  readonly im: Float64Array;
+  /** 1/S(f) as used: truncated in time, zero outside the band. */
+  readonly inverse: Float64Array;
+  /** Hz */
+  readonly low: number;
+  readonly high: number;
+  /** Samples before and after a value that enter it, and over which a block's ends are faded. */
+  readonly lead: number;
+  readonly tail: number;
+  readonly fade: number;
+}
+
+/** Whether peaks of an `SnrSeries` look like the template in noise. */
+export interface Consistency {
+  readonly kind: 'consistency';
+  readonly label: string;
+  readonly notes?: readonly string[];
+  readonly peaks: readonly ConsistentPeak[];
+}
+
+export interface ConsistentPeak {
+  readonly time: GpsTime;
+  readonly snr: number;
+  readonly chiSquared: number;
+  /** Degrees of freedom, two per band less two. */
+  readonly freedom: number;
+  /** Probability of a χ² at least as large in Gaussian noise with this signal. */
+  readonly pValue: number;
+  readonly reweighted: number;
+  /** Edges of the bands in Hz and what each adds to χ²; its mean is 2 (1 − share). */
+  readonly edges: Float64Array;
+  readonly parts: Float64Array;
+  /** Seconds from the peak, |SNR| there, and what the template alone would give. */
+  readonly lag: Float64Array;
+  readonly around: Float64Array;
+  readonly expected: Float64Array;
+  /** Mean square of SNR less expected shape over its mean in Gaussian noise: 1 expected. */
+  readonly shape: number;
+  readonly shapePValue: number;
+}
+
 export interface Envelope {
   readonly cell: number;
   readonly low: Float64Array;
@@ -200,6 +278,8 @@ export interface DataKinds {
   map: TimeFrequencyMap;
   trend: Trend;
   statistic: FrequencyStatistic;
+  snr: SnrSeries;
+  consistency: Consistency;
 }
 
 export type DataKind = keyof DataKinds;

@@ -21,6 +21,7 @@ import type {
 } from '../protocol/engine';
 import { checkParam, defaultOf } from '../protocol/param-check';
 import { steps } from '../steps';
+import { parseSites, siteNamed, type Site } from '../sites/sites';
 import type { AnyStep, ParamSpecs, ParamValues, StepInputs, StepOutcome } from '../steps/define';
 import { ByteCache, bytesOf } from './cache';
 import { diagnose } from './diagnose';
@@ -226,6 +227,8 @@ export class Engine implements EngineApi {
       const files = Object.entries(step.params).flatMap(([key, p]) =>
         p.kind === 'file' && params[key] !== '' ? [this.#host.stamp(resolve(params[key] as string))] : [],
       );
+      const sitesFile = step.usesSites?.(params) === true ? parsed.recipe?.sites : undefined;
+      if (sitesFile !== undefined) files.push(this.#host.stamp(resolve(sitesFile)));
       const parts = [step.id, step.version, params, files, sources.map((v) => v.print)];
       const print = fingerprint(this.#host.hasher(), parts);
       let kept = this.#results.get(print);
@@ -237,6 +240,7 @@ export class Engine implements EngineApi {
           kernels: this.#host.kernels,
           memoryLimit: this.#host.memoryLimit,
           readText: (path) => this.#host.readText(resolve(path)),
+          site: (name) => siteOf(sitesFile, name, (path) => this.#host.readText(resolve(path))),
           block: report,
         });
         kept = { outcome, step, params, inputs };
@@ -334,6 +338,15 @@ export class Engine implements EngineApi {
         call.event({ type: 'running', id, fraction, ...(note === undefined ? {} : { note }) });
       });
   }
+}
+
+function siteOf(file: string | undefined, name: string, readText: (path: string) => string): Site {
+  if (file === undefined)
+    throw new UserError(
+      'no-sites',
+      `site "${name}" is named, but the recipe has no sites file: add "sites": "….sites.json" beside "inputs"`,
+    );
+  return siteNamed(parseSites(readText(file), file), name, file);
 }
 
 function resolveParams(step: AnyStep, spec: StepSpec): ParamValues<ParamSpecs> {

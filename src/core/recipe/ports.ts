@@ -15,6 +15,8 @@ const KIND_WORDS: Record<DataKind, string> = {
   map: 'a time-frequency map',
   trend: 'a trend',
   statistic: 'a statistic against frequency',
+  snr: 'a signal-to-noise series',
+  consistency: 'a consistency check',
 };
 
 export const kindWords = (kind: DataKind): string => KIND_WORDS[kind];

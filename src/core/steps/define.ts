@@ -4,6 +4,7 @@ import type { Table } from '../data/table';
 import type { GpsTime } from '../data/gps-time';
 import type { Figure, Viewport } from '../figures/figure';
 import type { Kernels } from '../kernels/kernels';
+import type { Site } from '../sites/sites';
 
 interface Described {
   readonly label: string;
@@ -102,6 +103,11 @@ export interface StepContext {
   block(fraction: number, note?: string): Promise<void>;
   /** Text of a small file named by a `file` parameter. */
   readText(path: string): string;
+  /**
+   * A site of the recipe's sites file by name. Only for steps whose `usesSites` says so; throws a UserError when the recipe
+   * names no sites file or the file has no such site.
+   */
+  site(name: string): Site;
   /** Bytes the step should stay under for its own work arrays. */
   readonly memoryLimit: number;
 }
@@ -135,6 +141,8 @@ export interface Step<O extends DataKind = DataKind, S extends ParamSpecs = Para
   readonly gives: O;
   readonly params: S;
   readonly sources: readonly Source[];
+  /** Whether these parameters make the step read the sites file, which then is part of what identifies the result. */
+  usesSites?(params: ParamValues<S>): boolean;
   run(inputs: StepInputs, params: ParamValues<S>, context: StepContext): Promise<StepOutcome<O>>;
   /** Pictures of a result; called again with another viewport when the user zooms. */
   figures(
@@ -153,4 +161,4 @@ export function defineStep<O extends DataKind, const S extends ParamSpecs>(step:
  * A step with its parameter types forgotten, for registries. Parameters are checked against `params` before `run`,
  * which is what makes this safe.
  */
-export type AnyStep = Step<DataKind, ParamSpecs>;
+export type AnyStep = Step;
