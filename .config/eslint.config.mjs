@@ -23,6 +23,7 @@ export default tseslint.config(
       'demo/**',
       '**/*.mjs',
       '**/*.cjs',
+      '**/*.d.mts',
       'src/wasm/**',
       '.config/**',
     ],

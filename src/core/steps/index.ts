@@ -6,7 +6,7 @@ import referenceNoise from './reference-noise';
 
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
-  'noise-spectrum': noiseSpectrum as unknown as AnyStep,
-  overview: overview as unknown as AnyStep,
-  'reference-noise': referenceNoise as unknown as AnyStep,
+  'noise-spectrum': noiseSpectrum,
+  overview: overview,
+  'reference-noise': referenceNoise,
 };
