@@ -1,11 +1,13 @@
 // Written by `npm run sync`: one line per file of this folder.
 import type { AnyStep } from './define';
+import coherence from './coherence';
 import noiseSpectrum from './noise-spectrum';
 import overview from './overview';
 import referenceNoise from './reference-noise';
 
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
+  coherence: coherence,
   'noise-spectrum': noiseSpectrum,
   overview: overview,
   'reference-noise': referenceNoise,
