@@ -173,6 +173,53 @@ export interface FrequencyStatistic {
   readonly probability: number;
 }
 
+/**
+ * A signal as its Fourier transform (kernel e^(−2πift), strain/Hz), detector-frame masses, as a detector straight below a
+ * source seen face on would record it: h = h₊. The time t = 0 is at `origin`.
+ */
+export interface Waveform {
+  readonly kind: 'waveform';
+  readonly label: string;
+  /** "inspiral", "file" and the like. */
+  readonly model: string;
+  readonly facts: readonly WaveformFact[];
+  /** Mpc (luminosity distance) at which `re`, `im` and `at` are stated; strain goes with 1/distance. Absent when the amplitude is its own. */
+  readonly distance?: number;
+  /** What orientation the amplitude is for: "face on, straight above (optimal)". */
+  readonly reference: string;
+  /** Circular: h̃× = −i h̃₊ for f > 0. Linear: h× = 0. Both: each is its own. */
+  readonly polarisation: 'circular' | 'linear' | 'both';
+  /** Quadrupole radiation: seen at inclination ι, h₊ goes with (1 + cos²ι)/2 and h× with cos ι. */
+  readonly quadrupole: boolean;
+  /** h̃₊ on bins k · df from 0 Hz. */
+  readonly df: number;
+  readonly re: Float64Array;
+  readonly im: Float64Array;
+  /** Hz; h̃ is zero outside. */
+  readonly low: number;
+  readonly high: number;
+  /** Seconds before and after t = 0 that hold the signal but for a negligible part, and their sum. */
+  readonly before: number;
+  readonly after: number;
+  readonly duration: number;
+  /** What happens at t = 0: "coalescence", "amplitude peak". */
+  readonly origin: string;
+  readonly notes?: readonly string[];
+  /** h̃ at any frequencies ≥ 0 Hz in strain/Hz, from the model itself, not from the bins. */
+  at(
+    frequency: Float64Array,
+    which?: 'plus' | 'cross',
+  ): { readonly re: Float64Array; readonly im: Float64Array };
+}
+
+/** A parameter a waveform was made with. */
+export interface WaveformFact {
+  readonly id: string;
+  readonly label: string;
+  readonly value: number | string;
+  readonly unit: string;
+}
+
 /** Complex signal-to-noise ratio against time for one template, one value per sample of the series it came from. */
 export interface SnrSeries {
   readonly kind: 'snr';
@@ -190,8 +237,19 @@ export interface SnrSeries {
   /** Samples whose value would rest on data beyond an edge. */
   readonly spoilt: readonly Span[];
   readonly notes?: readonly string[];
+  /** The loudest maxima, loudest first. */
+  readonly peaks: readonly SnrPeak[];
   readonly template: SnrTemplate;
   readonly filter: SnrFilter;
+}
+
+/** A local maximum of |SNR|. */
+export interface SnrPeak {
+  /** Sample index, fractional. */
+  readonly at: number;
+  readonly snr: number;
+  /** Radians in (−π, π]. */
+  readonly phase: number;
 }
 
 /** The template of an `SnrSeries`; the time of a value is that of the template's t = 0. */
@@ -216,6 +274,8 @@ export interface SnrFilter {
   /** Hz */
   readonly low: number;
   readonly high: number;
+  /** Independent values per second. */
+  readonly bandwidth: number;
   /** Samples before and after a value that enter it, and over which a block's ends are faded. */
   readonly lead: number;
   readonly tail: number;
@@ -280,6 +340,7 @@ export interface DataKinds {
   statistic: FrequencyStatistic;
   snr: SnrSeries;
   consistency: Consistency;
+  waveform: Waveform;
 }
 
 export type DataKind = keyof DataKinds;

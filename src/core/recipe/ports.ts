@@ -17,6 +17,7 @@ const KIND_WORDS: Record<DataKind, string> = {
   statistic: 'a statistic against frequency',
   snr: 'a signal-to-noise series',
   consistency: 'a consistency check',
+  waveform: 'a waveform',
 };
 
 export const kindWords = (kind: DataKind): string => KIND_WORDS[kind];
