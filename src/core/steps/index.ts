@@ -1,6 +1,8 @@
 // Written by `npm run sync`: one line per file of this folder.
 import type { AnyStep } from './define';
 import coherence from './coherence';
+import gaussianity from './gaussianity';
+import matchedFilter from './matched-filter';
 import noiseSpectrum from './noise-spectrum';
 import overview from './overview';
 import referenceNoise from './reference-noise';
@@ -8,6 +10,8 @@ import referenceNoise from './reference-noise';
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
   coherence: coherence,
+  gaussianity: gaussianity,
+  'matched-filter': matchedFilter,
   'noise-spectrum': noiseSpectrum,
   overview: overview,
   'reference-noise': referenceNoise,
