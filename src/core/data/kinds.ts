@@ -255,6 +255,8 @@ export interface SnrPeak {
 /** The template of an `SnrSeries`; the time of a value is that of the template's t = 0. */
 export interface SnrTemplate {
   readonly label: string;
+  /** What happens at its t = 0: "coalescence". */
+  readonly origin: string;
   /** σ = √(h|h) at `distance`. */
   readonly sigma: number;
   /** Mpc; absent when the template has an amplitude of its own. */
