@@ -276,8 +276,9 @@ export interface SnrFilter {
   /** Hz */
   readonly low: number;
   readonly high: number;
-  /** Independent values per second. */
+  /** Independent values per second: (Σw)²/Σw² Δf with w = |h̃|²/S; and root mean square of f about its mean under w, Hz. */
   readonly bandwidth: number;
+  readonly spread: number;
   /** Samples before and after a value that enter it, and over which a block's ends are faded. */
   readonly lead: number;
   readonly tail: number;
