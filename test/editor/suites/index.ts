@@ -1,7 +1,16 @@
 import type { EditorSuite } from '../runner';
 import { dataViewSuite } from './data-view';
+import { largeFileSuite } from './large-file';
 import { demoSuite, lookSuite } from './look';
+import { missingRateSuite } from './missing-rate';
 import { workbenchSuite } from './workbench';
 
 /** Every suite, in the order of the run. */
-export const suites: readonly EditorSuite[] = [workbenchSuite, dataViewSuite, lookSuite, demoSuite];
+export const suites: readonly EditorSuite[] = [
+  workbenchSuite,
+  dataViewSuite,
+  missingRateSuite,
+  lookSuite,
+  demoSuite,
+  largeFileSuite,
+];

@@ -58,7 +58,9 @@ export const lookSuite: EditorSuite = {
       });
     },
 
-    'saves a recipe that the command line reruns to the same numbers': async (workbench) => {
+    'saves a recipe that the command line reruns to the same numbers and that opens again': async (
+      workbench,
+    ) => {
       await cardIn(await lookView(workbench), 'noise', 'done');
       await workbench.runCommand('File: Save');
       const path = await until('the saved recipe', () =>
@@ -76,6 +78,13 @@ export const lookSuite: EditorSuite = {
         const copied = await workbench.page.evaluate(() => navigator.clipboard.readText());
         return copied === `${floor.value} ${floor.unit}`;
       });
+      // closed and opened from the Explorer, it is the same look
+      const shown = await shownNumber(saved, 'noise', 'floor');
+      await workbench.closeAllEditors();
+      await workbench.openFile(basename(path));
+      const again = await lookView(workbench);
+      await cardIn(again, 'noise', 'done');
+      assert.equal(await shownNumber(again, 'noise', 'floor'), shown);
     },
   },
 };
