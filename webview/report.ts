@@ -1,5 +1,5 @@
 import type { Figure, Trace } from '../src/core/figures/figure';
-import type { ThemeKind } from './figure/colours';
+import type { ThemeKind } from '../src/core/figures/colours';
 import type { PlotlyLibrary } from './figure/plotly-types';
 import { toPlotly } from './figure/to-plotly';
 

@@ -7,7 +7,7 @@ import { FigureBox, plotWidth } from '../figure/figure-box';
 import type { Views } from '../figure/views';
 import type { Host } from '../page/host';
 import { RateForm } from '../page/rate-form';
-import { secondsText } from '../words/numbers';
+import { secondsText } from '../../src/core/figures/shown-number';
 import { channelFacts, type ChannelFacts } from './channel-words';
 
 interface Props {

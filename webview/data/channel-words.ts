@@ -1,6 +1,6 @@
 import { addSamples, formatGps, utcText } from '../../src/core/data/gps-time';
 import type { FileDescription } from '../../src/core/protocol/engine';
-import { numberText, secondsText } from '../words/numbers';
+import { numberText, secondsText } from '../../src/core/figures/shown-number';
 
 export type ChannelFacts = FileDescription['channels'][number];
 

@@ -4,7 +4,7 @@ import type { FileDescription } from '../../src/core/protocol/engine';
 import type { DataState, FromDataPage, ToDataPage } from '../../src/core/protocol/panel';
 import { Views, type SavedViews } from '../figure/views';
 import type { Host } from '../page/host';
-import { bytesText, numberText } from '../words/numbers';
+import { bytesText, numberText } from '../../src/core/figures/shown-number';
 import { ChannelView } from './channel-view';
 import { Tree } from './tree';
 

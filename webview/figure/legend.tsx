@@ -1,15 +1,8 @@
 import type { JSX } from 'preact';
 import type { Figure } from '../../src/core/figures/figure';
-import { markStyle, strokeOf, fillOf, type Stroke, type ThemeKind } from './colours';
+import { DASHES, markStyle, strokeOf, fillOf, type ThemeKind } from '../../src/core/figures/colours';
 import type { Readout } from './readout';
 import { axisTitle } from './to-plotly';
-
-const DASHES: Readonly<Record<Stroke['dash'], string>> = {
-  solid: 'none',
-  dash: '6 3',
-  dot: '1.5 3',
-  dashdot: '6 3 1.5 3',
-};
 
 interface Props {
   readonly figure: Figure;

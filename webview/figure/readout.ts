@@ -1,6 +1,6 @@
 import type { Figure, Trace } from '../../src/core/figures/figure';
 import { instantAfter } from '../words/instants';
-import { numberText } from '../words/numbers';
+import { numberText } from '../../src/core/figures/shown-number';
 
 /** What is under the pointer, as words: where, and the value of every trace there. */
 export interface Readout {

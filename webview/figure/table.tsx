@@ -2,7 +2,7 @@ import { useState } from 'preact/hooks';
 import type { JSX } from 'preact';
 import type { Cell, Table } from '../../src/core/data/table';
 import { csvOf } from '../words/csv';
-import { numberText } from '../words/numbers';
+import { numberText } from '../../src/core/figures/shown-number';
 
 interface Props {
   readonly table: Table;

@@ -1,4 +1,4 @@
-import type { ThemeKind } from './colours';
+import type { ThemeKind } from '../../src/core/figures/colours';
 
 /** Kind of theme from the classes the editor puts on the body. */
 export function themeKind(classes: Iterable<string>): ThemeKind {

@@ -1,4 +1,4 @@
-import type { ThemeKind } from './colours';
+import type { ThemeKind } from '../../src/core/figures/colours';
 import { themeKind } from './theme-kind';
 
 /** Everything a figure takes from the editor's theme. */

@@ -1,5 +1,5 @@
 import type { Axis, Figure, Mark, Trace } from '../../src/core/figures/figure';
-import { fillOf, markStyle, strokeOf } from './colours';
+import { fillOf, markStyle, strokeOf } from '../../src/core/figures/colours';
 import type { PlotlyLayout, PlotlyTrace } from './plotly-types';
 import { inPlace, valueRange, type Range, type View } from './ranges';
 import type { Theme } from './theme';

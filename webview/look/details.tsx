@@ -1,6 +1,6 @@
 import type { JSX } from 'preact';
 import type { StepProvenance } from '../../src/core/protocol/engine';
-import { numberText } from '../words/numbers';
+import { numberText } from '../../src/core/figures/shown-number';
 import { useLook } from './context';
 import { valueText } from './param-text';
 

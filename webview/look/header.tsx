@@ -3,7 +3,7 @@ import { useEffect, useState } from 'preact/hooks';
 import type { InputView, LookState } from '../../src/core/protocol/panel';
 import { LINK_GROUPS, type LinkGroup } from '../figure/views';
 import { instantAfter, utcOf } from '../words/instants';
-import { numberText, secondsText } from '../words/numbers';
+import { numberText, secondsText } from '../../src/core/figures/shown-number';
 import { useLook } from './context';
 
 const LINK_WORDS: Readonly<Record<LinkGroup, string>> = {

@@ -1,6 +1,6 @@
 import type { JSX } from 'preact';
 import { useState } from 'preact/hooks';
-import { numberText } from '../words/numbers';
+import { numberText } from '../../src/core/figures/shown-number';
 import { sliderPlace, sliderValue } from './param-text';
 
 interface Props {

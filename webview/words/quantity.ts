@@ -1,5 +1,5 @@
 import type { Quantity } from '../../src/core/data/quantity';
-import { digitsFor, numberText } from './numbers';
+import { digitsFor, numberText } from '../../src/core/figures/shown-number';
 
 /** Texts of a quantity: value with unit, interval with its meaning, and what the copy button puts on the clipboard. */
 export interface QuantityText {

@@ -1,6 +1,14 @@
-import type { Mark, TraceRole } from '../../src/core/figures/figure';
+import type { Mark, TraceRole } from './figure';
 
 export type ThemeKind = 'light' | 'dark' | 'contrast-light' | 'contrast-dark';
+
+/** Dash patterns as SVG has them. */
+export const DASHES: Readonly<Record<Stroke['dash'], string>> = {
+  solid: 'none',
+  dash: '6 3',
+  dot: '1.5 3',
+  dashdot: '6 3 1.5 3',
+};
 
 export interface Stroke {
   readonly colour: string;

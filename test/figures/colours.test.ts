@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { TraceRole } from '../../src/core/figures/figure';
-import { markStyle, strokeOf, THEME_KINDS, type ThemeKind } from '../../webview/figure/colours';
+import { markStyle, strokeOf, THEME_KINDS, type ThemeKind } from '../../src/core/figures/colours';
 
 const ROLES: TraceRole[] = ['data', 'second', 'third', 'reference', 'model'];
 /** Grounds of the editor's own four default themes. */
