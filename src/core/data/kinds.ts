@@ -24,6 +24,8 @@ export interface Series {
   readonly valid: readonly Span[];
   /** Samples that exist but that a filter's edge has spoilt: hatched in pictures, never in `valid`. */
   readonly spoilt?: readonly Span[];
+  /** Valid samples that a gate has turned down or to zero: a spectrum or a candidate there is not that of the detector. */
+  readonly gates?: readonly Span[];
   /** Things every later card must repeat: "contains an injection". */
   readonly notes?: readonly string[];
   /** What the one pass over an input found; absent on series that a step made. */

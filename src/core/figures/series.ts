@@ -39,6 +39,7 @@ export function seriesFigure(series: Series, viewport: Viewport, options: Series
     marks: [
       ...spanMarks(gaps, series, columns, 'gap', 'gap'),
       ...spanMarks(spoilt, series, columns, 'cropped', 'filter edge'),
+      ...spanMarks(series.gates ?? [], series, columns, 'event', 'gate'),
       ...(options.marks ?? []),
     ],
   };
@@ -128,6 +129,7 @@ function caption(
   ];
   if (gaps.length > 0) parts.push(`${counted(gaps.length, 'gap')} marked.`);
   if (spoilt.length > 0) parts.push(`${counted(spoilt.length, 'filter edge')} marked: not to be used.`);
+  if (series.gates?.length) parts.push(`${counted(series.gates.length, 'gate')} marked.`);
   if (note !== undefined) parts.push(note);
   return parts.join(' ') + repeated(series.notes);
 }
