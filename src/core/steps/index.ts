@@ -8,6 +8,7 @@ import matchedFilter from './matched-filter';
 import noiseSpectrum from './noise-spectrum';
 import overview from './overview';
 import referenceNoise from './reference-noise';
+import resample from './resample';
 
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
@@ -19,4 +20,5 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   'noise-spectrum': noiseSpectrum,
   overview: overview,
   'reference-noise': referenceNoise,
+  resample: resample,
 };
