@@ -1,7 +1,7 @@
 // Puts a complete VS Code server (the one inside the npm package code-server) under .e2e/server, so that the editor
 // tests can drive the real workbench in a browser where the desktop editor cannot be downloaded.
 //   node scripts/editor-setup.mjs [--force]
-// Only the npm registry is used, and g++/make/python3 for two small addons. Nothing is installed outside .e2e.
+// Only the npm registry is used, and g++/make/python3 for three small addons. Nothing is installed outside .e2e.
 import { execFileSync } from 'node:child_process';
 import { existsSync, mkdirSync, readFileSync, renameSync, rmSync, symlinkSync, writeFileSync } from 'node:fs';
 import { dirname, join } from 'node:path';
@@ -10,7 +10,10 @@ import { editorFacts, findProgram, root } from './editor-facts.mjs';
 const { serverDir, version, vscode } = editorFacts;
 const stampFile = join(serverDir, 'ready.json');
 
-const ready = existsSync(stampFile) && JSON.parse(readFileSync(stampFile, 'utf8')).version === version;
+// What of the server is compiled here: logging, process watching, and the terminals that tasks run in.
+const addons = ['@vscode/spdlog', 'native-watchdog', 'node-pty'];
+const stamp = JSON.stringify({ version, vscode, addons });
+const ready = existsSync(stampFile) && readFileSync(stampFile, 'utf8').trim() === stamp;
 if (ready && !process.argv.includes('--force')) {
   console.log(`editor server: code-server ${version} (VS Code ${vscode}) already in ${serverDir}`);
 } else {
@@ -27,10 +30,10 @@ function install() {
   // --ignore-scripts: the packages' own scripts would download prebuilt binaries.
   npm(building, 'package', ['install', '--ignore-scripts', `code-server@${version}`]);
   npm(inside, 'server modules', ['install', '--ignore-scripts', '--omit=dev', '--no-save']);
-  npm(inside, 'addons', ['rebuild', '@vscode/spdlog', 'native-watchdog']);
+  npm(inside, 'addons', ['rebuild', ...addons]);
   symlinkSync('node_modules', join(inside, 'node_modules.asar'));
   linkRipgrep(inside);
-  writeFileSync(join(building, 'ready.json'), JSON.stringify({ version, vscode }) + '\n');
+  writeFileSync(join(building, 'ready.json'), `${stamp}\n`);
   rmSync(serverDir, { recursive: true, force: true });
   renameSync(building, serverDir);
   console.log(`editor server: code-server ${version} (VS Code ${vscode}) now in ${serverDir}`);
@@ -71,5 +74,6 @@ function cleanEnv() {
   const kept = Object.entries(process.env).filter(
     ([name]) => !/^npm_/i.test(name) || /^npm_config_(nodedir|registry|cache|python)$/i.test(name),
   );
-  return { ...Object.fromEntries(kept), INIT_CWD: root };
+  // One addon's script calls npx, which must not wait for an answer.
+  return { ...Object.fromEntries(kept), INIT_CWD: root, npm_config_yes: 'true' };
 }

@@ -216,19 +216,37 @@ await put(
   `<!-- Written by \`npm run sync\` from src/core/steps. -->\n\n# Steps\n\nThe mark behind a source says how it entered: read in the source, from memory, computed here, or common practice with no source.\n\n${reference}`,
 );
 
-// Palette: one command per step, so that each is found by name.
+// Palette: one command per step, so that each is found by name; those that a data file alone can feed are in the
+// Explorer's menu too.
 const manifest = JSON.parse(readFileSync('package.json', 'utf8'));
 if (manifest.contributes?.commands) {
   const prefix = 'fringeside.addStep.';
-  const own = manifest.contributes.commands.filter((c) => !c.command.startsWith(prefix));
+  const { menus } = manifest.contributes;
+  const others = (list) => (list ?? []).filter((c) => !c.command?.startsWith(prefix));
+  const needs = (s) => s.takes.filter((t) => t.count !== 'optional');
+  const ofData = (s) => needs(s).length === 1 && needs(s)[0].kind === 'series';
+  const data = 'activeCustomEditorId =~ /^fringeside\\.data/';
+  const order = ['look', 'noise', 'condition', 'picture', 'signal', 'search'];
   manifest.contributes.commands = [
-    ...own,
+    ...others(manifest.contributes.commands),
     ...all.map((s) => ({
       command: `${prefix}${s.id}`,
       title: `Add Step: ${s.title}`,
       category: 'Fringeside',
-      enablement: 'fringeside.lookActive',
     })),
+  ];
+  menus.commandPalette = [
+    ...others(menus.commandPalette),
+    ...all.map((s) => ({
+      command: `${prefix}${s.id}`,
+      when: ofData(s) ? `fringeside.lookActive || ${data}` : 'fringeside.lookActive',
+    })),
+  ];
+  menus['fringeside.analyse'] = [
+    ...others(menus['fringeside.analyse']),
+    ...all
+      .filter(ofData)
+      .map((s) => ({ command: `${prefix}${s.id}`, group: `${order.indexOf(s.group) + 1}_${s.group}` })),
   ];
   await put(
     'package.json',

@@ -1,32 +1,20 @@
 import * as vscode from 'vscode';
+import { analyse } from './analyse';
 import { convertTime } from './convert-time';
+import { DATA_ENDINGS, isDataFile } from './data-endings';
 import { DATA_VIEWS } from './data/data-editor';
 import { addNamedStep, pickStep } from './look/add-step';
 import { isRecipe, LOOK_VIEW } from './look/documents';
 import type { LookSession } from './look/look-session';
 import type { Sessions } from './look/sessions';
+import { verifyRecipe } from './recipes/verify-recipe';
+import { lookAt } from './scripts/look-at';
 import type { Services } from './services';
 import { startLookOn } from './start-look';
+import { writeDemoData } from './write-demo';
 
 /** Commands generated in package.json, one per step: what follows is the step's id. */
 const ADD_STEP = 'addStep.';
-const ENDINGS = [
-  'h5',
-  'hdf5',
-  'npy',
-  'npz',
-  'csv',
-  'tsv',
-  'txt',
-  'gz',
-  'wav',
-  'bin',
-  'raw',
-  'dat',
-  'f32',
-  'f64',
-];
-
 /** All commands. Each takes what a menu passes, else the active editor, else asks. */
 export function registerCommands(
   services: Services,
@@ -81,11 +69,27 @@ export function registerCommands(
       .map(({ command }) => command.replace(/^fringeside\./, ''))
       .filter((id) => id.startsWith(ADD_STEP))
       .map((id) =>
-        register(
-          id,
-          withLook((s) => addNamedStep(s, id.slice(ADD_STEP.length))),
-        ),
+        register(id, (uri?: vscode.Uri, selected?: readonly vscode.Uri[]) => {
+          const name = id.slice(ADD_STEP.length);
+          const files = selected && selected.length > 0 ? selected : [uri ?? activeData()];
+          const data = files.filter((f) => f !== undefined && isDataFile(f.path)) as vscode.Uri[];
+          return data.length > 0
+            ? analyse(data, name, services)
+            : withLook((s) => addNamedStep(s, name))(uri);
+        }),
       ),
+    register('verify', async (uri?: vscode.Uri) => {
+      const recipe = uri ?? activeFile();
+      if (recipe && isRecipe(recipe)) return verifyRecipe(recipe, services);
+      return vscode.window.showInformationMessage('Open a recipe first: its name ends in .fringe.json.');
+    }),
+    register('writeDemoData', () => writeDemoData(services)),
+    // Behind links in hovers and code actions; not in the palette.
+    register('lookAt', (gps: string, document?: string) => lookAt(gps, document, services)),
+    register('startLookOn', (uri: string) => startLookOn([vscode.Uri.parse(uri)], services)),
+    register('openDataViewOf', (uri: string) =>
+      vscode.commands.executeCommand('fringeside.openDataView', vscode.Uri.parse(uri)),
+    ),
     register('convertTime', convertTime),
     register('showLog', () => services.log.show()),
   ];
@@ -108,7 +112,7 @@ function activeFile(): vscode.Uri | undefined {
 
 function activeData(): vscode.Uri | undefined {
   const uri = activeFile();
-  return uri && ENDINGS.some((e) => uri.path.toLowerCase().endsWith(`.${e}`)) ? uri : undefined;
+  return uri && isDataFile(uri.path) ? uri : undefined;
 }
 
 function lookOfTab(sessions: Sessions): LookSession | undefined {
@@ -120,7 +124,7 @@ async function askForFile(label: string): Promise<vscode.Uri | undefined> {
   const folder = vscode.workspace.workspaceFolders?.[0]?.uri;
   const picked = await vscode.window.showOpenDialog({
     openLabel: label,
-    filters: { 'Data files': ENDINGS, 'All files': ['*'] },
+    filters: { 'Data files': [...DATA_ENDINGS], 'All files': ['*'] },
     ...(folder ? { defaultUri: folder } : {}),
   });
   return picked?.[0];

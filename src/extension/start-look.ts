@@ -63,13 +63,15 @@ function spanValues({ channel, answers, span }: LookStart): Record<string, unkno
 export async function openLook(
   starts: readonly [LookStart, ...LookStart[]],
   services: Services,
+  /** Further steps for the recipe's text. */
+  more: (text: string) => string = (text) => text,
 ): Promise<vscode.Uri> {
   const file = starts[0].file;
   const folder = dirname(file);
   const uri = await freeName(folder, stem(file));
   const document = await vscode.workspace.openTextDocument(uri);
   const edit = new vscode.WorkspaceEdit();
-  edit.insert(uri, new vscode.Position(0, 0), lookText(starts, folder));
+  edit.insert(uri, new vscode.Position(0, 0), more(lookText(starts, folder)));
   await vscode.workspace.applyEdit(edit);
   services.log.info(`new look ${basename(document.uri.fsPath)} on ${starts.map((s) => s.file).join(', ')}`);
   await vscode.commands.executeCommand('vscode.openWith', uri, LOOK_VIEW);
@@ -103,7 +105,11 @@ async function exists(uri: vscode.Uri): Promise<boolean> {
 }
 
 /** Starts a look on data files named in the Explorer or the palette, asking only for what the files do not say. */
-export async function startLookOn(files: readonly vscode.Uri[], services: Services): Promise<void> {
+export async function startLookOn(
+  files: readonly vscode.Uri[],
+  services: Services,
+  more?: (text: string) => string,
+): Promise<void> {
   const starts: LookStart[] = [];
   for (const uri of files) {
     const description = await services.engine.api.describe({ file: uri.fsPath });
@@ -114,7 +120,7 @@ export async function startLookOn(files: readonly vscode.Uri[], services: Servic
     starts.push({ file: uri.fsPath, channel, answers });
   }
   const first = starts.shift();
-  if (first !== undefined) await openLook([first, ...starts], services);
+  if (first !== undefined) await openLook([first, ...starts], services, more);
 }
 
 async function pickChannel(description: FileDescription): Promise<ChannelFacts | undefined> {

@@ -1,10 +1,14 @@
 import assert from 'node:assert/strict';
 import * as vscode from 'vscode';
+import { agentTests } from './host/agent';
+import type { HostTests } from './host/api';
+import { recipeTests } from './host/recipes';
+import { scriptTests } from './host/scripts';
 
 /** Tests that need the vscode API; the editor loads this file into its extension host and calls `run`. */
 const id = 'fringeside.fringeside';
 
-const tests: Readonly<Record<string, () => Promise<void>>> = {
+const tests: HostTests = {
   'the packaged extension is present and activates': async () => {
     const extension = vscode.extensions.getExtension(id);
     assert.ok(extension, `${id} is not installed`);
@@ -20,6 +24,10 @@ const tests: Readonly<Record<string, () => Promise<void>>> = {
     const missing = manifest.contributes.commands.map((c) => c.command).filter((c) => !known.has(c));
     assert.deepEqual(missing, []);
   },
+
+  ...scriptTests,
+  ...recipeTests,
+  ...agentTests,
 };
 
 /** Runs every test, prints "ok - name" or "not ok - name", rejects when one failed. */

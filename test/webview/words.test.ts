@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { csvOf } from '../../webview/words/csv';
 import { epochShift, instantAfter, utcOf } from '../../webview/words/instants';
 import { bytesText, digitsFor, numberText, secondsText } from '../../src/core/figures/shown-number';
-import { quantityText } from '../../webview/words/quantity';
+import { quantityText } from '../../src/core/figures/quantity-text';
 
 describe('numbers', () => {
   it.each([

@@ -1,7 +1,7 @@
 import type { JSX } from 'preact';
 import { useState } from 'preact/hooks';
 import type { Quantity } from '../../src/core/data/quantity';
-import { quantityText } from '../words/quantity';
+import { quantityText } from '../../src/core/figures/quantity-text';
 import { useLook } from './context';
 
 /** Key numbers, each with unit, convention and interval; how it is computed and from where is one click away. */

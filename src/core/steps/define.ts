@@ -10,6 +10,8 @@ interface Described {
   readonly label: string;
   /** One or two sentences: what it does, when the default is wrong. */
   readonly help: string;
+  /** One of the few that are asked for when the step is added from the palette. */
+  readonly ask?: true;
 }
 
 /** A number with its unit; `default: null` means "the step decides and says what it took". */

@@ -1,7 +1,9 @@
 import * as vscode from 'vscode';
+import type { StepDescription } from '../../core/protocol/engine';
 import type { Addable } from '../../core/protocol/panel';
 import { freshId, type NewStep } from '../../core/recipe/edit';
 import { addableSteps } from './addable';
+import { askParams } from './ask-params';
 import { applyRecipeEdit } from './documents';
 import type { LookSession } from './look-session';
 
@@ -44,14 +46,21 @@ export async function pickStep(session: LookSession): Promise<void> {
   if (picked) await addStep(session, { do: picked.step.do, of: picked.step.of });
 }
 
-/** Adds a step by name, with the newest data of each kind it takes; says what is missing when there is none. */
+/** Adds a step by name, with the newest data of each kind it takes, after asking for the parameters that matter most. */
 export async function addNamedStep(session: LookSession, name: string): Promise<void> {
   const fit = session.recipe && addableSteps(session.recipe, session.steps).find((a) => a.do === name);
-  if (fit) {
-    await addStep(session, { do: fit.do, of: fit.of });
+  const step = session.steps.find((s) => s.id === name);
+  if (!fit || !step) {
+    sayMissing(name, session.steps);
     return;
   }
-  const takes = session.steps.find((s) => s.id === name)?.takes.filter((p) => p.count !== 'optional') ?? [];
+  const params = await askParams(step);
+  if (params) await addStep(session, { do: fit.do, of: fit.of, params });
+}
+
+/** Says what a step needs that a recipe has not got. */
+export function sayMissing(name: string, steps: readonly StepDescription[]): void {
+  const takes = steps.find((s) => s.id === name)?.takes.filter((p) => p.count !== 'optional') ?? [];
   const needs = takes.map((p) => `${p.kind} (${p.help})`).join(' and ');
   void vscode.window.showWarningMessage(
     `${name} was not added: the recipe has nothing to feed it. It needs ${needs}.`,

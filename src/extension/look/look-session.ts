@@ -1,6 +1,12 @@
 import * as vscode from 'vscode';
 import { CancelledError, UserError } from '../../core/data/errors';
-import type { Diagnostic, EngineFacts, InputProvenance, StepDescription } from '../../core/protocol/engine';
+import type {
+  Card,
+  Diagnostic,
+  EngineFacts,
+  InputProvenance,
+  StepDescription,
+} from '../../core/protocol/engine';
 import type { CardHead, CardView, LookOutline, LookState, RunView } from '../../core/protocol/panel';
 import type { Figure, Viewport } from '../../core/figures/figure';
 import { parseRecipe } from '../../core/recipe/parse';
@@ -171,12 +177,25 @@ export class LookSession implements vscode.Disposable {
       this.#engine = result.engine;
       this.#results.stop('cancelled');
       this.#run = { state: 'idle' };
+      this.#remember(result.cards);
     } catch (e) {
       if (!mine()) return;
       this.#break(e);
       return;
     }
     this.#changed.fire({ type: 'outline' });
+  }
+
+  #remember(cards: readonly Card[]): void {
+    if (this.document.isUntitled) return;
+    const on = cards.filter((c) => c.state !== 'off');
+    this.#services.recent.add({
+      path: this.document.uri.fsPath,
+      at: Date.now(),
+      steps: on.length,
+      done: on.filter((c) => c.state === 'done').length,
+      warnings: on.reduce((n, c) => n + c.warnings.length, 0),
+    });
   }
 
   #break(e: unknown): void {

@@ -2,6 +2,7 @@ import type { EditorSuite } from '../runner';
 import { dataViewSuite } from './data-view';
 import { largeFileSuite } from './large-file';
 import { demoSuite, lookSuite } from './look';
+import { looksViewSuite } from './looks-view';
 import { missingRateSuite } from './missing-rate';
 import { workbenchSuite } from './workbench';
 
@@ -12,5 +13,6 @@ export const suites: readonly EditorSuite[] = [
   missingRateSuite,
   lookSuite,
   demoSuite,
+  looksViewSuite,
   largeFileSuite,
 ];

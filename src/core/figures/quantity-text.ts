@@ -1,5 +1,5 @@
-import type { Quantity } from '../../src/core/data/quantity';
-import { digitsFor, numberText } from '../../src/core/figures/shown-number';
+import type { Quantity } from '../data/quantity';
+import { digitsFor, numberText } from './shown-number';
 
 /** Texts of a quantity: value with unit, interval with its meaning, and what the copy button puts on the clipboard. */
 export interface QuantityText {
