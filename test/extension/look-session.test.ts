@@ -70,7 +70,11 @@ function open(): {
       }),
     redraw,
   };
-  const services = { engine: { api, steps: api.steps }, log: { error: vi.fn() }, recent: { add: vi.fn() } } as unknown as Services;
+  const services = {
+    engine: { api, steps: api.steps },
+    log: { error: vi.fn() },
+    recent: { add: vi.fn() },
+  } as unknown as Services;
   const session = new LookSession(document.object, services);
   return {
     session,
