@@ -2,7 +2,8 @@ import { UserError } from '../data/errors';
 import type { Spectrum } from '../data/kinds';
 import { numberText, withUnit } from '../figures/number-text';
 import type { Kernels } from '../kernels/kernels';
-import { coveredBand, densityAt, inverseSpectrum } from './matched-filter-inverse';
+import { coveredBand, densityAt } from '../noise/inverse-spectrum';
+import { inverseSpectrum } from './matched-filter-inverse';
 import type { BlockShape } from './overlap-save';
 import type { Template } from './template';
 

@@ -1,48 +1,8 @@
 import { UserError } from '../data/errors';
 import type { Spectrum } from '../data/kinds';
 import { numberText } from '../figures/number-text';
-import { lowerBound } from '../figures/thin';
 import type { Kernels } from '../kernels/kernels';
-
-/**
- * One-sided density at evenly spaced frequencies, straight between the spectrum's own bins; NaN outside of them.
- */
-export function densityAt(spectrum: Spectrum, frequency: number): number {
-  const { frequency: f, density } = spectrum;
-  const k = lowerBound(f, frequency);
-  if (k < f.length && f[k] === frequency) return density[k];
-  if (k === 0 || k === f.length) return NaN;
-  const part = (frequency - f[k - 1]) / (f[k] - f[k - 1]);
-  return density[k - 1] + part * (density[k] - density[k - 1]);
-}
-
-/**
- * The part of a band in which a spectrum has a positive density. A bin of an estimate at zero frequency or at the Nyquist
- * frequency does not count.
- *
- * @throws UserError when nothing is left, or when a hole lies inside
- */
-export function coveredBand(spectrum: Spectrum, band: readonly [number, number]): [number, number] {
-  const { frequency: f, density } = spectrum;
-  const usable = (k: number): boolean => density[k] > 0 && density[k] < Infinity && f[k] > 0;
-  let a = lowerBound(f, band[0]);
-  if (a > 0 && (a === f.length || f[a] > band[0])) a--;
-  let b = Math.min(f.length - 1, lowerBound(f, band[1]));
-  while (a < b && !usable(a)) a++;
-  while (b > a && !usable(b)) b--;
-  if (a >= b)
-    throw new UserError(
-      'band-empty',
-      `${spectrum.label} has no positive density between ${numberText(band[0])} and ${numberText(band[1])} Hz: choose another band with "low" and "high", or another spectrum`,
-    );
-  for (let k = a; k <= b; k++)
-    if (!usable(k))
-      throw new UserError(
-        'spectrum-hole',
-        `${spectrum.label} has density ${numberText(density[k])} at ${numberText(f[k])} Hz, inside the band filtered: a filter cannot divide by it; choose another band or spectrum`,
-      );
-  return [Math.max(band[0], f[a]), Math.min(band[1], f[b])];
-}
+import { densityAt, truncateInTime } from '../noise/inverse-spectrum';
 
 /**
  * 1/S on the bins of a block, made to reach at most `seconds` to either side in time, so that a line one bin wide does not
@@ -82,14 +42,9 @@ export function inverseSpectrum(
     top = Math.max(top, root[k]);
   }
   for (let k = from; k <= to; k++) root[k] /= top;
-  const time = kernels.irfft(root, new Float64Array(root.length), size);
-  for (let i = 0; i <= size / 2; i++) {
-    const w = i < half ? 0.5 + 0.5 * Math.cos((Math.PI * i) / half) : 0;
-    time[i] *= w;
-    if (i > 0 && i < size / 2) time[size - i] *= w;
-  }
-  const { re } = kernels.rfft(time);
+  const hann = (u: number): number => 0.5 + 0.5 * Math.cos(Math.PI * u);
+  const { response } = truncateInTime(kernels, root, size, half, hann);
   const first = Math.ceil(band[0] / df - 1e-9);
   const last = Math.floor(band[1] / df + 1e-9);
-  return re.map((a, k) => (k < first || k > last ? 0 : (a * top) ** 2));
+  return response.map((a, k) => (k < first || k > last ? 0 : (a * top) ** 2));
 }

@@ -4,13 +4,13 @@ import { numberText } from '../figures/number-text';
 import { makeWindow } from '../kernels/windows';
 import { windowFigures } from '../kernels/window-figures';
 import type { Kernels } from '../kernels/kernels';
-import { binError } from '../noise/bin-error';
-import { planSegments } from '../noise/segments';
-import { densityUnit } from '../noise/units';
-import { welchEstimate } from '../noise/welch-estimate';
+import { binError } from './bin-error';
+import { planSegments } from './segments';
+import { densityUnit } from './units';
+import { welchEstimate } from './welch-estimate';
 
 /**
- * The series' own noise spectrum for a search: median of half-overlapping Hann segments, because a loud signal moves the
+ * The series' own noise spectrum, to filter it with: median of half-overlapping Hann segments, because a loud signal moves the
  * mean but hardly the median.
  *
  * @param seconds length of a segment

@@ -1,0 +1,39 @@
+import type { ParamSpecs } from '../steps/define';
+
+export const WHITEN_PARAMS = {
+  low: {
+    kind: 'number',
+    label: 'From',
+    unit: 'Hz',
+    default: 20,
+    min: 0,
+    help: 'Lowest frequency kept. Below it the noise wall carries no signal, and what is whitened there makes slow wander as large as everything else. 0 keeps all.',
+  },
+  high: {
+    kind: 'number',
+    label: 'To',
+    unit: 'Hz',
+    default: null,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Highest frequency kept. Left empty: half the sample rate, or as far as the spectrum reaches. Set it below where the data have been filtered away (after resampling up, for example).',
+  },
+  reach: {
+    kind: 'number',
+    label: 'Reach of the filter',
+    unit: 's',
+    default: 2,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Seconds the whitening filter may reach to either side, which is also what is dropped at each end of a valid span. Its frequency resolution is 1.36 divided by this: raise it when narrow lines stay in, lower it when the data are short.',
+  },
+  segment: {
+    kind: 'number',
+    label: 'Segment of the own spectrum',
+    unit: 's',
+    default: 4,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Only without a spectrum in "of": length of the half-overlapping Hann segments whose median is taken as noise of these data.',
+  },
+} as const satisfies ParamSpecs;
