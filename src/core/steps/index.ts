@@ -9,6 +9,7 @@ import noiseSpectrum from './noise-spectrum';
 import overview from './overview';
 import referenceNoise from './reference-noise';
 import resample from './resample';
+import whiten from './whiten';
 
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
@@ -21,4 +22,5 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   overview: overview,
   'reference-noise': referenceNoise,
   resample: resample,
+  whiten: whiten,
 };
