@@ -11,6 +11,7 @@ const base = {
   // jsonc-parser's CommonJS entry hides its requires from bundlers; its module entry does not.
   mainFields: ['module', 'main'],
   minifySyntax: true,
+  loader: { '.py': 'text' },
 };
 const page = {
   ...base,

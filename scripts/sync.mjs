@@ -41,6 +41,36 @@ ${ids.map((id) => `  '${id}': ${camel(id)},`).join('\n')}
 `,
 );
 
+// Equivalents in Python: `src/core/python/<step>.py`, and what scripts made of them share.
+const pyFolder = 'src/core/python';
+const pyFiles = (sub) =>
+  readdirSync(join(pyFolder, sub))
+    .filter((f) => f.endsWith('.py'))
+    .map((f) => f.slice(0, -3))
+    .sort();
+const pyGroups = [
+  ['stepSources', '', "Source of each step's equivalent, by the step's id."],
+  ['shared', 'shared', 'Functions that several equivalents call, by their name.'],
+  ['readers', 'readers', 'Readers of data files, by format.'],
+  ['frame', 'frame', 'What every script has: reading and checking inputs, comparing numbers.'],
+].map(([name, sub, about]) => ({ name, sub, about, files: pyFiles(sub) }));
+const pyName = (g, f) => camel(`${g.name === 'stepSources' ? 'step' : g.name}-${f.replaceAll('_', '-')}`);
+await put(
+  `${pyFolder}/index.ts`,
+  `// Written by \`npm run sync\`: the Python files of this folder as text.
+${pyGroups.flatMap((g) => g.files.map((f) => `import ${pyName(g, f)} from './${g.sub ? `${g.sub}/` : ''}${f}.py';`)).join('\n')}
+
+${pyGroups
+  .map(
+    (g) => `/** ${g.about} */
+export const ${g.name}: Readonly<Record<string, string>> = {
+${g.files.map((f) => `  '${g.sub === 'shared' ? f.replaceAll('-', '_') : f}': ${pyName(g, f)},`).join('\n')}
+};`,
+  )
+  .join('\n\n')}
+`,
+);
+
 // The descriptions come from the steps themselves, bundled on the spot.
 const work = 'node_modules/.cache/fringeside-sync';
 mkdirSync(work, { recursive: true });
@@ -50,6 +80,7 @@ await build({
   bundle: true,
   format: 'esm',
   platform: 'node',
+  loader: { '.py': 'text' },
   outfile: bundle,
   logLevel: 'error',
 });

@@ -3,7 +3,14 @@ import { join } from 'node:path';
 import { build } from 'esbuild';
 import { root } from '../../scripts/editor-facts.mjs';
 
-const shared = { bundle: true, platform: 'node', target: 'node20', sourcemap: 'inline', logLevel: 'warning' };
+const shared = {
+  bundle: true,
+  platform: 'node',
+  target: 'node20',
+  sourcemap: 'inline',
+  logLevel: 'warning',
+  loader: { '.py': 'text' },
+};
 
 /** The runner with all suites, an ES module with run(options); packages stay outside. */
 export async function bundleRunner(folder) {

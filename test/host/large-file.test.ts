@@ -21,6 +21,7 @@ test('a 600 MB file: the first picture and a look in bounded memory', async () =
     platform: 'node',
     format: 'esm',
     outfile: child,
+    loader: { '.py': 'text' },
     logLevel: 'error',
   });
   const out = execFileSync(process.execPath, [child, path, join(process.cwd(), 'dist')], {

@@ -48,9 +48,34 @@ export interface ChannelFacts {
   readonly unit?: Found<string>;
   /** Runs of samples that exist in time order without holes, when the file tells (a time column with jumps). Absent means one run. */
   readonly runs?: readonly Span[];
+  /** Where its samples lie, for formats whose name and shape do not tell; what an exported script reads them by. */
+  readonly layout?: ChannelLayout;
   /** Things the user should know: scale of an integer type, a fit of the time column, a guess. */
   readonly notes: readonly string[];
 }
+
+export type ChannelLayout =
+  /** Of interleaved tracks, from 0. */
+  | { readonly kind: 'track'; readonly track: number }
+  | {
+      readonly kind: 'raw';
+      readonly littleEndian: boolean;
+      /** Bytes before the first sample. */
+      readonly offset: number;
+      readonly tracks: number;
+      readonly track: number;
+    }
+  | {
+      readonly kind: 'column';
+      /** From 0. */
+      readonly column: number;
+      readonly delimiter: string;
+      readonly decimalComma: boolean;
+      /** 1-based line of the first numbers; code of the line end. */
+      readonly firstLine: number;
+      readonly newline: number;
+      readonly gzip: boolean;
+    };
 
 /** A node of the file's tree as shown in the panel. */
 export interface FileNode {

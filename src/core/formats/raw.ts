@@ -51,6 +51,13 @@ export const rawFormat: Format = {
         ...(sidecar.unit === undefined
           ? {}
           : { unit: { value: sidecar.unit, where: `"unit" in ${sidecarName}` } }),
+        layout: {
+          kind: 'raw',
+          littleEndian: sidecar.littleEndian,
+          offset: sidecar.offset,
+          tracks,
+          track: k,
+        },
         notes: [...typeNotes(sidecar.type), ...over],
       };
       const read = arrayReader(

@@ -44,7 +44,7 @@ export const textFormat: Format = {
       const fit: TimeFit | undefined = time && index.track ? fitTrack(index.track, time) : undefined;
       const notes = [...dialect.notes, ...(time?.notes ?? []), ...(fit?.notes ?? [])];
       const channels = dialect.columns.flatMap((_, k) =>
-        k === time?.column ? [] : [columnChannel(source, dialect, index, k, fit, notes)],
+        k === time?.column ? [] : [columnChannel(source, dialect, index, k, fit, notes, gzip)],
       );
       return openChannels(
         {
@@ -87,6 +87,7 @@ function columnChannel(
   column: number,
   fit: TimeFit | undefined,
   notes: readonly string[],
+  gzip: boolean,
 ): ReadableChannel {
   const { name, unit, header } = dialect.columns[column];
   const grid = fit?.grid;
@@ -103,6 +104,15 @@ function columnChannel(
     ...(found.start ? { start: found.start } : {}),
     ...(found.unit ? { unit: found.unit } : {}),
     ...(grid ? { runs: grid.runs } : {}),
+    layout: {
+      kind: 'column',
+      column,
+      delimiter: dialect.delimiter,
+      decimalComma: dialect.decimalComma,
+      firstLine: dialect.dataLine,
+      newline: dialect.newline,
+      gzip,
+    },
     notes: [...found.notes, ...notes],
   };
   const rows = columnReader(source, dialect, index, column);

@@ -60,6 +60,7 @@ export const wavFormat: Format = {
           length,
           rate: { value: facts.rate, where: 'rate of the "fmt " chunk' },
           unit: { value: 'full scale', where: 'WAVE convention: full scale is 1' },
+          layout: { kind: 'track', track: k },
           notes: facts.notes,
         };
         return {

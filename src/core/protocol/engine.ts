@@ -21,6 +21,8 @@ export interface EngineApi {
   run(request: RunRequest, call: Call<RunEvent>): Promise<RunResult>;
   /** Draws a card's figures for another viewport from the result kept under `fingerprint`; fails with code "evicted" when it is gone. */
   redraw(request: RedrawRequest, call: Call<Progress>): Promise<readonly Figure[]>;
+  /** Runs a recipe and writes a script in Python that computes the same numbers and compares. */
+  exportPython(request: ExportRequest, call: Call<RunEvent>): Promise<PythonExport>;
 }
 
 /** Carried by every call: where events go, and whether the caller has given up. */
@@ -59,6 +61,23 @@ export interface RunRequest extends RecipeText {
   /** Only these steps and what they need; absent means all. */
   readonly only?: readonly string[];
   readonly viewport?: Viewport;
+}
+
+export interface ExportRequest extends RecipeText {
+  /** Only these steps and what they need; absent means all. */
+  readonly only?: readonly string[];
+  /** The recipe's folder as seen from the script's: "." when both are in one place. */
+  readonly dataFolder: string;
+}
+
+export interface PythonExport {
+  /** Absent when nothing could be exported: the diagnostics or `leftOut` say why. */
+  readonly script?: string;
+  /** Ids of the steps it computes. */
+  readonly steps: readonly string[];
+  /** Steps it leaves out, and why. */
+  readonly leftOut: readonly { readonly id: string; readonly do: string; readonly why: string }[];
+  readonly diagnostics: readonly Diagnostic[];
 }
 
 export type RunEvent =

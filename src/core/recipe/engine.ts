@@ -1,5 +1,6 @@
 import { CancelledError, UserError } from '../data/errors';
 import type { AnyData } from '../data/kinds';
+import { pythonScript } from '../export/script';
 import { DEFAULT_VIEWPORT, type Figure } from '../figures/figure';
 import type {
   Call,
@@ -7,10 +8,12 @@ import type {
   CardError,
   Diagnostic,
   EngineApi,
+  ExportRequest,
   FileDescription,
   InputProvenance,
   PreviewRequest,
   Progress,
+  PythonExport,
   RecipeText,
   RedrawRequest,
   RunEvent,
@@ -172,6 +175,34 @@ export class Engine implements EngineApi {
     const kept = this.#results.get(print);
     if (!kept) throw new UserError('evicted', 'this result is no longer in memory; run the look again');
     return kept.step.figures(kept.outcome.data, kept.params, kept.inputs, viewport);
+  }
+
+  async exportPython(request: ExportRequest, call: Call<RunEvent>): Promise<PythonExport> {
+    const result = await this.run(request, call);
+    const { recipe } = this.#parsed(request);
+    if (!recipe) return { steps: [], leftOut: [], diagnostics: result.diagnostics };
+    // The samples were gone through by the run; this finds what it found.
+    const inputs = new Map<string, PreparedInput>();
+    for (const { name } of result.inputs) {
+      const report = this.#reporter(call, name);
+      inputs.set(
+        name,
+        await this.#inputs.prepare(name, recipe.inputs[name], request.folder, (f) => report(f)),
+      );
+    }
+    const rank = new Map(dependencyOrder(recipe).order.map((s, k) => [s.id, k]));
+    const wanted = request.only && withNeeds(recipe, request.only);
+    const cards = result.cards
+      .filter((c) => !wanted || wanted.has(c.id))
+      .sort((a, b) => rank.get(a.id)! - rank.get(b.id)!);
+    const { dataFolder } = request;
+    const made = pythonScript({ recipe, version: this.#host.version, cards, inputs, registry, dataFolder });
+    return {
+      ...(made.steps.length > 0 ? { script: made.text } : {}),
+      steps: made.steps,
+      leftOut: made.leftOut,
+      diagnostics: result.diagnostics,
+    };
   }
 
   #parsed(request: RecipeText): ParsedRecipe {

@@ -26,6 +26,10 @@ export interface PreparedInput {
   readonly series: Series;
   readonly fingerprint: string;
   readonly provenance: InputProvenance;
+  readonly spec: InputSpec;
+  readonly facts: ChannelFacts;
+  /** Sample of the channel that is the first of the series. */
+  readonly from: number;
 }
 
 /** Opens data files and turns a recipe's inputs into series, scanning each span once. */
@@ -131,7 +135,7 @@ export class InputReader {
         seconds: (g.to - g.from) / rate,
       })),
     };
-    return { series, fingerprint: print, provenance };
+    return { series, fingerprint: print, provenance, spec, facts: channel, from };
   }
 }
 

@@ -3,6 +3,7 @@ import { hint, nearestNames } from '../../core/data/nearest';
 import { VERSION } from '../version';
 import { parseArgs, type Args, type OptionSpec } from './args';
 import { demo } from './demo';
+import { exportCommand } from './export';
 import { overview } from './overview';
 import { run } from './run';
 import { stepsCommand } from './steps';
@@ -17,7 +18,7 @@ export interface Command {
   run(args: Args, world: World): Promise<number>;
 }
 
-const COMMANDS: readonly Command[] = [overview, run, verifyCommand, stepsCommand, demo];
+const COMMANDS: readonly Command[] = [overview, run, verifyCommand, exportCommand, stepsCommand, demo];
 
 function help(command?: Command): string {
   if (command) {

@@ -1,5 +1,8 @@
+import numpy as np
+
+
 def valid_runs(x):
-    """Half-open runs of finite samples as pairs of indices."""
+    """Runs of valid (finite) samples as half-open pairs of indices."""
     good = np.concatenate(([False], np.isfinite(x), [False]))
     edges = np.flatnonzero(good[1:] != good[:-1])
-    return [(int(a), int(b)) for a, b in zip(edges[::2], edges[1::2])]
+    return list(zip(edges[::2].tolist(), edges[1::2].tolist()))

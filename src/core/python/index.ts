@@ -1,0 +1,67 @@
+// Written by `npm run sync`: the Python files of this folder as text.
+import stepCoherence from './coherence.py';
+import stepCompareNoise from './compare-noise.py';
+import stepGaussianity from './gaussianity.py';
+import stepNoiseSpectrum from './noise-spectrum.py';
+import stepOverview from './overview.py';
+import stepReferenceNoise from './reference-noise.py';
+import stepResample from './resample.py';
+import sharedDetrendedBins from './shared/detrended_bins.py';
+import sharedGroupRanges from './shared/group_ranges.py';
+import sharedMakeWindow from './shared/make_window.py';
+import sharedMeanVariance from './shared/mean_variance.py';
+import sharedMedianBias from './shared/median_bias.py';
+import sharedMedianVariance from './shared/median_variance.py';
+import sharedOverlapCorrelations from './shared/overlap_correlations.py';
+import sharedSegmentStarts from './shared/segment_starts.py';
+import sharedSegmentTransforms from './shared/segment_transforms.py';
+import sharedValidRuns from './shared/valid_runs.py';
+import readersHdf5 from './readers/hdf5.py';
+import readersNpy from './readers/npy.py';
+import readersNpz from './readers/npz.py';
+import readersRaw from './readers/raw.py';
+import readersText from './readers/text.py';
+import readersWav from './readers/wav.py';
+import frameAgreement from './frame/agreement.py';
+import frameInputs from './frame/inputs.py';
+
+/** Source of each step's equivalent, by the step's id. */
+export const stepSources: Readonly<Record<string, string>> = {
+  coherence: stepCoherence,
+  'compare-noise': stepCompareNoise,
+  gaussianity: stepGaussianity,
+  'noise-spectrum': stepNoiseSpectrum,
+  overview: stepOverview,
+  'reference-noise': stepReferenceNoise,
+  resample: stepResample,
+};
+
+/** Functions that several equivalents call, by their name. */
+export const shared: Readonly<Record<string, string>> = {
+  detrended_bins: sharedDetrendedBins,
+  group_ranges: sharedGroupRanges,
+  make_window: sharedMakeWindow,
+  mean_variance: sharedMeanVariance,
+  median_bias: sharedMedianBias,
+  median_variance: sharedMedianVariance,
+  overlap_correlations: sharedOverlapCorrelations,
+  segment_starts: sharedSegmentStarts,
+  segment_transforms: sharedSegmentTransforms,
+  valid_runs: sharedValidRuns,
+};
+
+/** Readers of data files, by format. */
+export const readers: Readonly<Record<string, string>> = {
+  hdf5: readersHdf5,
+  npy: readersNpy,
+  npz: readersNpz,
+  raw: readersRaw,
+  text: readersText,
+  wav: readersWav,
+};
+
+/** What every script has: reading and checking inputs, comparing numbers. */
+export const frame: Readonly<Record<string, string>> = {
+  agreement: frameAgreement,
+  inputs: frameInputs,
+};
