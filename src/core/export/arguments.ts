@@ -67,6 +67,7 @@ function passed(kind: DataKind, at: string | undefined): string[] {
 export function positionalArguments(
   ports: readonly Port[],
   of: readonly { readonly at: string; readonly kind: DataKind }[],
+  variadic: boolean,
 ): string[] {
   const left = [...of];
   const take = (kind: DataKind): string | undefined => {
@@ -74,7 +75,10 @@ export function positionalArguments(
     return k < 0 ? undefined : left.splice(k, 1)[0].at;
   };
   return ports.flatMap((port) => {
-    if (port.count !== 'many') return passed(port.kind, take(port.kind));
+    if (port.count !== 'many') {
+      const at = take(port.kind);
+      return at === undefined && variadic ? [] : passed(port.kind, at);
+    }
     const all = left.filter((o) => o.kind === port.kind).map((o) => o.at);
     left.splice(0, left.length, ...left.filter((o) => o.kind !== port.kind));
     const each = all.map((at) =>

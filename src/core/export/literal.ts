@@ -1,7 +1,7 @@
 import { formatGps, type GpsTime } from '../data/gps-time';
 
 /** Invisible and direction-changing characters, which must be seen in a script, not act in it. */
- 
+
 const UNSEEN =
   /[\u0000-\u001f\u007f-\u00a0\u00ad\u061c\u200b-\u200f\u2028-\u202f\u2060-\u206f\ufeff\ufff0-\uffff]/g;
 

@@ -142,7 +142,7 @@ function mainFunction(
     const given = card.of.map((name) => ({ at: place(name), kind: kindOf(name) }));
     const spectra = given.filter((g) => g.kind === 'spectrum').map((g) => g.at);
     const args = [
-      ...positionalArguments(step.takes, given),
+      ...positionalArguments(step.takes, given, source.variadic),
       ...(source.keywords.includes('spectra') ? [`spectra=[${spectra.join(', ')}]`] : []),
       `**params[${pyString(card.id)}]`,
     ];

@@ -5,6 +5,8 @@ export interface PythonSource {
   readonly body: string;
   readonly function: string;
   readonly positional: readonly string[];
+  /** Whether an optional input may be left out (`*spectrum`), else None stands for it. */
+  readonly variadic: boolean;
   readonly keywords: readonly string[];
   readonly tolerances: ReadonlyMap<string, Tolerance>;
   /** Quantities of the step that it does not state, and why. */
@@ -49,12 +51,13 @@ export function pythonSource(text: string, name: string): PythonSource {
     .split(',')
     .map((p) => p.trim())
     .filter((p) => p !== '');
-  const star = parts.indexOf('*');
+  const star = parts.findIndex((p) => p.startsWith('*'));
   return {
     imports,
     body: rest.join('\n').trim(),
     function: wanted,
     positional: star < 0 ? parts : parts.slice(0, star),
+    variadic: star >= 0 && parts[star] !== '*',
     keywords: star < 0 ? [] : parts.slice(star + 1),
     tolerances,
     notComputed,

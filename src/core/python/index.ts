@@ -6,11 +6,13 @@ import stepNoiseSpectrum from './noise-spectrum.py';
 import stepOverview from './overview.py';
 import stepReferenceNoise from './reference-noise.py';
 import stepResample from './resample.py';
+import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
 import sharedGroupRanges from './shared/group_ranges.py';
 import sharedMakeWindow from './shared/make_window.py';
 import sharedMeanVariance from './shared/mean_variance.py';
 import sharedMedianBias from './shared/median_bias.py';
+import sharedMedianSpectrum from './shared/median_spectrum.py';
 import sharedMedianVariance from './shared/median_variance.py';
 import sharedOverlapCorrelations from './shared/overlap_correlations.py';
 import sharedSegmentStarts from './shared/segment_starts.py';
@@ -34,6 +36,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   overview: stepOverview,
   'reference-noise': stepReferenceNoise,
   resample: stepResample,
+  whiten: stepWhiten,
 };
 
 /** Functions that several equivalents call, by their name. */
@@ -43,6 +46,7 @@ export const shared: Readonly<Record<string, string>> = {
   make_window: sharedMakeWindow,
   mean_variance: sharedMeanVariance,
   median_bias: sharedMedianBias,
+  median_spectrum: sharedMedianSpectrum,
   median_variance: sharedMedianVariance,
   overlap_correlations: sharedOverlapCorrelations,
   segment_starts: sharedSegmentStarts,
