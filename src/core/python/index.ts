@@ -1,20 +1,28 @@
 // Written by `npm run sync`: the Python files of this folder as text.
+import stepBandPass from './band-pass.py';
 import stepCoherence from './coherence.py';
 import stepCompareNoise from './compare-noise.py';
 import stepGaussianity from './gaussianity.py';
+import stepHighPass from './high-pass.py';
 import stepNoiseSpectrum from './noise-spectrum.py';
+import stepNotch from './notch.py';
 import stepOverview from './overview.py';
 import stepReferenceNoise from './reference-noise.py';
 import stepResample from './resample.py';
 import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
+import sharedFilterValidRuns from './shared/filter_valid_runs.py';
 import sharedGroupRanges from './shared/group_ranges.py';
+import sharedHalfPowerHz from './shared/half_power_hz.py';
 import sharedMakeWindow from './shared/make_window.py';
 import sharedMeanVariance from './shared/mean_variance.py';
 import sharedMedianBias from './shared/median_bias.py';
 import sharedMedianSpectrum from './shared/median_spectrum.py';
 import sharedMedianVariance from './shared/median_variance.py';
 import sharedOverlapCorrelations from './shared/overlap_correlations.py';
+import sharedPassSections from './shared/pass_sections.py';
+import sharedPassesGain from './shared/passes_gain.py';
+import sharedRingingS from './shared/ringing_s.py';
 import sharedSegmentStarts from './shared/segment_starts.py';
 import sharedSegmentTransforms from './shared/segment_transforms.py';
 import sharedValidRuns from './shared/valid_runs.py';
@@ -29,10 +37,13 @@ import frameInputs from './frame/inputs.py';
 
 /** Source of each step's equivalent, by the step's id. */
 export const stepSources: Readonly<Record<string, string>> = {
+  'band-pass': stepBandPass,
   coherence: stepCoherence,
   'compare-noise': stepCompareNoise,
   gaussianity: stepGaussianity,
+  'high-pass': stepHighPass,
   'noise-spectrum': stepNoiseSpectrum,
+  notch: stepNotch,
   overview: stepOverview,
   'reference-noise': stepReferenceNoise,
   resample: stepResample,
@@ -42,13 +53,18 @@ export const stepSources: Readonly<Record<string, string>> = {
 /** Functions that several equivalents call, by their name. */
 export const shared: Readonly<Record<string, string>> = {
   detrended_bins: sharedDetrendedBins,
+  filter_valid_runs: sharedFilterValidRuns,
   group_ranges: sharedGroupRanges,
+  half_power_hz: sharedHalfPowerHz,
   make_window: sharedMakeWindow,
   mean_variance: sharedMeanVariance,
   median_bias: sharedMedianBias,
   median_spectrum: sharedMedianSpectrum,
   median_variance: sharedMedianVariance,
   overlap_correlations: sharedOverlapCorrelations,
+  pass_sections: sharedPassSections,
+  passes_gain: sharedPassesGain,
+  ringing_s: sharedRingingS,
   segment_starts: sharedSegmentStarts,
   segment_transforms: sharedSegmentTransforms,
   valid_runs: sharedValidRuns,

@@ -1,11 +1,14 @@
 // Written by `npm run sync`: one line per file of this folder.
 import type { AnyStep } from './define';
+import bandPass from './band-pass';
 import coherence from './coherence';
 import compareNoise from './compare-noise';
 import consistency from './consistency';
 import gaussianity from './gaussianity';
+import highPass from './high-pass';
 import matchedFilter from './matched-filter';
 import noiseSpectrum from './noise-spectrum';
+import notch from './notch';
 import overview from './overview';
 import referenceNoise from './reference-noise';
 import resample from './resample';
@@ -13,12 +16,15 @@ import whiten from './whiten';
 
 /** Every step, by id. */
 export const steps: Readonly<Record<string, AnyStep>> = {
+  'band-pass': bandPass,
   coherence: coherence,
   'compare-noise': compareNoise,
   consistency: consistency,
   gaussianity: gaussianity,
+  'high-pass': highPass,
   'matched-filter': matchedFilter,
   'noise-spectrum': noiseSpectrum,
+  notch: notch,
   overview: overview,
   'reference-noise': referenceNoise,
   resample: resample,
