@@ -3,13 +3,9 @@ import type { Spectrum } from '../data/kinds';
 import { numberText } from '../figures/number-text';
 import { lowerBound } from '../figures/thin';
 import type { Kernels } from '../kernels/kernels';
+import { blackmanHarris, MAIN_LOBE, WIDTH } from './truncation-window';
 import { coveredBand, densityAt, truncateInTime } from '../noise/inverse-spectrum';
 
-/** Weights of the 4-term Blackman–Harris window about its middle: side lobes below −92 dB (Harris 1978). */
-const WEIGHTS = [0.35875, 0.48829, 0.14128, 0.01168] as const;
-/** Full width at half height of its transform, in units of 1/length, and half the width of the main lobe. */
-export const WIDTH = 2.72;
-const MAIN_LOBE = 4;
 /** Lowest bins of a spectrum that detrending may have emptied, whatever its window. */
 const DETRENDED = 4;
 /** Samples of the grid the filter is designed on, at most, unless its reach needs more. */
@@ -31,9 +27,6 @@ export interface WhitenDesign {
   readonly variance: number;
   readonly ideal: number;
 }
-
-const blackmanHarris = (u: number): number =>
-  WEIGHTS.reduce((sum, a, k) => sum + a * Math.cos(k * Math.PI * u), 0);
 
 /**
  * Response √(2 / (rate S(f))) in the band and 0 outside, drawn in by the half width of the window's main lobe, truncated to less

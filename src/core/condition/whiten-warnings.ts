@@ -3,7 +3,7 @@ import { spanLength } from '../data/spans';
 import { counted, numberText, withUnit } from '../figures/number-text';
 import { densityUnit } from '../noise/units';
 import { independent, type WhitenFacts } from './whiten-report';
-import { WIDTH } from './whiten-design';
+import { WIDTH } from './truncation-window';
 
 /** Segments below which a spectrum is too rough to whiten with. */
 const FEW = 8;

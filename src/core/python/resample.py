@@ -20,9 +20,7 @@ def resample(x, old_rate_hz, start_gps, *, rate_hz, stop_band):
     half = 0 if up == down else 10 * max(up, down)
     n = len(x)
     y = np.full(-(-n * up // down), np.nan)
-    good = np.concatenate(([False], np.isfinite(x), [False]))
-    edges = np.flatnonzero(good[1:] != good[:-1])
-    for a, b in zip(edges[::2], edges[1::2]):
+    for a, b in valid_runs(x):
         first = -(-(a * up + half) // down)
         last = ((b - 1) * up - half) // down + 1
         if last <= first:

@@ -20,7 +20,7 @@ def whiten(x, rate_hz, start_gps, *spectrum, low_hz, high_hz, reach_s, segment_s
     usable = f[(f > 0) & (s > 0)]
     low = 0.0 if from_zero else max(low_hz, usable[0])
     high = nyquist if to_nyquist else min(top, usable[-1])
-    half = int(round(reach_s * rate_hz))
+    half = int(np.floor(reach_s * rate_hz + 0.5))
     wanted = max(8 * half, min(2**21, 2 * rate_hz / df) if df > 0 else 0)
     size = 2 ** int(np.ceil(np.log2(wanted)))
     grid = np.arange(size // 2 + 1) * (rate_hz / size)

@@ -4,7 +4,7 @@ def median_spectrum(x, rate_hz, segment_s):
     x: samples, NaN where not valid. Returns frequency in Hz and density in (unit of x)^2/Hz.
     Source: Welch (1967); bias of the median: Allen et al., Phys. Rev. D 85, 122006 (2012), App. B.
     """
-    size = int(round(segment_s * rate_hz))
+    size = int(np.floor(segment_s * rate_hz + 0.5))
     step = size - size // 2
     starts = [at for a, b in valid_runs(x) for at in range(a, b - size + 1, step)]
     window = signal.get_window("hann", size, fftbins=True)

@@ -1,0 +1,63 @@
+import type { ParamSpecs } from '../steps/define';
+
+export const GATE_PARAMS = {
+  spans: {
+    kind: 'list',
+    label: 'Gates',
+    unit: 's',
+    each: 2,
+    default: [],
+    help: 'Spans to bring to zero, as pairs of seconds after the start of the input.',
+  },
+  'gps-spans': {
+    kind: 'list',
+    label: 'Gates at GPS',
+    unit: 's',
+    each: 2,
+    default: [],
+    help: 'The same as pairs of GPS seconds. Both lists may be used together.',
+  },
+  threshold: {
+    kind: 'number',
+    label: 'Gate above',
+    unit: '',
+    default: null,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Also gates every sample further from the median than this many robust widths (1.4826 times the median absolute deviation, the standard deviation of a Gaussian). Left empty: nothing is looked for. Take 20 or more for transients; below 6 noise alone is gated.',
+  },
+  low: {
+    kind: 'number',
+    label: 'Look from',
+    unit: 'Hz',
+    default: null,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Looks in a copy of the data without what lies below this frequency (half amplitude there, nothing below half of it). Left empty with "Look to" empty too: the samples are tested as they are, which is right for whitened data only.',
+  },
+  high: {
+    kind: 'number',
+    label: 'Look to',
+    unit: 'Hz',
+    default: null,
+    min: 0,
+    exclusiveMin: true,
+    help: 'Looks in a copy of the data without what lies above this frequency.',
+  },
+  margin: {
+    kind: 'number',
+    label: 'Margin',
+    unit: 's',
+    default: 0.25,
+    min: 0,
+    help: 'Seconds brought to zero on either side of each sample found. Spans that are given are taken as they are.',
+  },
+  taper: {
+    kind: 'number',
+    label: 'Taper',
+    unit: 's',
+    default: 0.25,
+    min: 0,
+    help: 'Seconds of half a cosine from the data to zero, outside of each gate. Too short a taper spreads the power of a steep spectrum over all frequencies: take at least several periods of the lowest frequency that matters.',
+  },
+} as const satisfies ParamSpecs;
