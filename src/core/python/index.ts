@@ -2,6 +2,7 @@
 import stepBandPass from './band-pass.py';
 import stepCoherence from './coherence.py';
 import stepCompareNoise from './compare-noise.py';
+import stepGate from './gate.py';
 import stepGaussianity from './gaussianity.py';
 import stepHighPass from './high-pass.py';
 import stepNoiseSpectrum from './noise-spectrum.py';
@@ -23,6 +24,7 @@ import sharedOverlapCorrelations from './shared/overlap_correlations.py';
 import sharedPassSections from './shared/pass_sections.py';
 import sharedPassesGain from './shared/passes_gain.py';
 import sharedRingingS from './shared/ringing_s.py';
+import sharedRobustWidth from './shared/robust_width.py';
 import sharedSegmentStarts from './shared/segment_starts.py';
 import sharedSegmentTransforms from './shared/segment_transforms.py';
 import sharedValidRuns from './shared/valid_runs.py';
@@ -40,6 +42,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   'band-pass': stepBandPass,
   coherence: stepCoherence,
   'compare-noise': stepCompareNoise,
+  gate: stepGate,
   gaussianity: stepGaussianity,
   'high-pass': stepHighPass,
   'noise-spectrum': stepNoiseSpectrum,
@@ -65,6 +68,7 @@ export const shared: Readonly<Record<string, string>> = {
   pass_sections: sharedPassSections,
   passes_gain: sharedPassesGain,
   ringing_s: sharedRingingS,
+  robust_width: sharedRobustWidth,
   segment_starts: sharedSegmentStarts,
   segment_transforms: sharedSegmentTransforms,
   valid_runs: sharedValidRuns,

@@ -4,6 +4,7 @@ import bandPass from './band-pass';
 import coherence from './coherence';
 import compareNoise from './compare-noise';
 import consistency from './consistency';
+import gate from './gate';
 import gaussianity from './gaussianity';
 import highPass from './high-pass';
 import matchedFilter from './matched-filter';
@@ -20,6 +21,7 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   coherence: coherence,
   'compare-noise': compareNoise,
   consistency: consistency,
+  gate: gate,
   gaussianity: gaussianity,
   'high-pass': highPass,
   'matched-filter': matchedFilter,
