@@ -313,3 +313,23 @@ test('figure: edges marked', async () => {
   expect(figure.marks.map((m) => m.role)).toEqual(['cropped', 'cropped']);
   expect(figure.y.unit).toBe('');
 });
+
+test('its own spectrum of n segments makes the variance too large by about 0.75/n', async () => {
+  const rate = 512;
+  for (const [seconds, segments] of [
+    [32, 15],
+    [128, 63],
+  ]) {
+    let excess = 0;
+    const runs = 480 / segments;
+    for (let seed = 1; seed <= runs; seed++) {
+      const run = await runStep(whiten, [
+        seriesOf(gaussianNoise(seconds * rate, 1, seed), rate, { unit: '' }),
+      ]);
+      excess += (run.number('variance') / run.number('share') - 1) / runs;
+    }
+    // Of 480 segments' worth of data in all: the mean of so many variances is known to 0.2 %.
+    expect(Math.abs(excess - 0.75 / segments)).toBeLessThan(0.006 + 0.2 / segments);
+    expect(excess).toBeGreaterThan(0.3 / segments);
+  }
+});

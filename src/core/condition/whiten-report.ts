@@ -48,6 +48,13 @@ export function whitenNumbers(f: WhitenFacts): Quantity[] {
         formula: '∫ |W(f)|² S(f) df, W the filter, S the spectrum; density 2/rate in the band',
       },
     },
+    {
+      id: 'share',
+      label: 'Share of the band',
+      value: design.ideal,
+      unit: '',
+      convention: 'variance of noise that is perfectly white in the band',
+    },
     { id: 'kurtosis', label: 'Excess kurtosis', value: s.kurtosis, unit: '', convention: '0 for a Gaussian' },
     {
       id: 'p-value',

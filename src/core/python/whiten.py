@@ -43,6 +43,7 @@ def whiten(x, rate_hz, start_gps, *spectrum, low_hz, high_hz, reach_s, segment_s
     response = np.abs(np.fft.rfft(np.roll(np.pad(taps, (0, size - len(taps))), -(half - 1))))
     weights = np.where((grid == 0) | (grid == grid[-1]), 0.5, 1.0)
     expected = np.nansum(weights * response**2 * density) * rate_hz / size
+    share = np.nansum(weights * root**2 * density) * rate_hz / size
     y = np.full(len(x), np.nan)
     for a, b in valid_runs(x):
         if b - a >= len(taps):
@@ -57,6 +58,7 @@ def whiten(x, rate_hz, start_gps, *spectrum, low_hz, high_hz, reach_s, segment_s
         "numbers": {
             "variance": np.var(kept),
             "expected": expected,
+            "share": share,
             "kurtosis": stats.kurtosis(kept, fisher=True, bias=True),
             "p-value": test.pvalue,
             "distance": test.statistic,
