@@ -7,6 +7,7 @@ import { addNamedStep, pickStep } from './look/add-step';
 import { isRecipe, LOOK_VIEW } from './look/documents';
 import type { LookSession } from './look/look-session';
 import type { Sessions } from './look/sessions';
+import { exportPython } from './recipes/export-python';
 import { verifyRecipe } from './recipes/verify-recipe';
 import { lookAt } from './scripts/look-at';
 import type { Services } from './services';
@@ -81,6 +82,11 @@ export function registerCommands(
     register('verify', async (uri?: vscode.Uri) => {
       const recipe = uri ?? activeFile();
       if (recipe && isRecipe(recipe)) return verifyRecipe(recipe, services);
+      return vscode.window.showInformationMessage('Open a recipe first: its name ends in .fringe.json.');
+    }),
+    register('exportPython', async (uri?: vscode.Uri) => {
+      const recipe = uri ?? activeFile();
+      if (recipe && isRecipe(recipe)) return exportPython(recipe, services);
       return vscode.window.showInformationMessage('Open a recipe first: its name ends in .fringe.json.');
     }),
     register('writeDemoData', () => writeDemoData(services)),

@@ -7,7 +7,7 @@ import type { AnyStep } from '../steps/define';
 import { paramLines, positionalArguments } from './arguments';
 import { exportedInput, type ExportedInput } from './input-facts';
 import { pyComment, pyFloat, pyString } from './literal';
-import { calledShared, pythonSource, USUAL, type PythonSource } from './source';
+import { calledShared, pythonSource, usualTolerance, type PythonSource } from './source';
 
 export interface ScriptRequest {
   readonly recipe: Recipe;
@@ -174,7 +174,7 @@ function expected(chosen: readonly Chosen[]): string {
         not.push(`    ${pyString(`${card.id}.${q.id}: ${why}`)},`);
         return [];
       }
-      const t = source.tolerances.get(q.id) ?? USUAL;
+      const t = source.tolerances.get(q.id) ?? usualTolerance(q.unit);
       const note = t.why === '' ? '' : `  # ${pyComment(t.why)}`;
       return [
         `        ${pyString(q.id)}: (${pyFloat(q.value)}, ${pyString(q.unit)}, ${pyFloat(t.rel)}, ${pyFloat(t.abs)}),${note}`,

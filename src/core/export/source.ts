@@ -21,7 +21,11 @@ export interface Tolerance {
 }
 
 /** Agreement asked of a quantity without one of its own: sums in another order differ by 1e-11 or less. */
-export const USUAL: Tolerance = { rel: 1e-9, abs: 0, why: '' };
+const USUAL: Tolerance = { rel: 1e-9, abs: 0, why: '' };
+/** A level of nearly 0 dB is no small quantity. */
+const LEVEL: Tolerance = { rel: 1e-9, abs: 1e-9, why: 'a logarithm' };
+
+export const usualTolerance = (unit: string): Tolerance => (unit === 'dB' ? LEVEL : USUAL);
 
 /**
  * Takes a `.py` file apart: imports at the top; lines `# tolerance ID: rel 1e-4, because …` (or `abs`) and
