@@ -62,7 +62,7 @@ describe('help and wrong use', () => {
   test('help lists every command and the exit codes; nothing at all is a wrong use', async () => {
     const help = await cli('--help');
     expect(help.code).toBe(0);
-    for (const name of ['overview', 'run', 'verify', 'steps', 'demo'])
+    for (const name of ['overview', 'run', 'verify', 'export', 'steps', 'demo'])
       expect(help.out).toContain(`fringeside ${name}`);
     expect(help.out).toContain('Exit codes');
     expect((await cli()).code).toBe(2);
@@ -189,5 +189,38 @@ describe('the built program', () => {
     expect(spawn('verify', 'wrong.fringe.json').status).toBe(1);
     expect(spawn('run', 'gone.fringe.json').status).toBe(2);
     expect(spawn('run', 'typo.fringe.json').status).toBe(3);
+  });
+});
+
+describe('export', () => {
+  test('prints one script, or writes it and says from where the data are reached', async () => {
+    const printed = await cli('export', 'good.fringe.json');
+    expect([printed.code, printed.err]).toEqual([0, '']);
+    expect(printed.out).toMatch(/^# \/\/\/ script\n/);
+    expect(printed.out).toContain('out["noise"] = noise_spectrum(');
+    const written = await cli('export', 'good.fringe.json', '--out', 'deeper/look.py', '--step', 'look');
+    expect([written.code, written.out, written.err]).toEqual([0, '', 'wrote deeper/look.py\n']);
+    const script = readFileSync(join(folder, 'deeper', 'look.py'), 'utf8');
+    expect(script).toContain('.parent / ".."\n');
+    expect(script).not.toContain('noise_spectrum');
+  });
+
+  test('names what is wrong, and never writes over data', async () => {
+    const before = readFileSync(join(folder, 'noise.npy'));
+    const over = await cli('export', 'good.fringe.json', '--out', 'noise.npy');
+    expect([over.code, over.err]).toEqual([
+      2,
+      'fringeside: --out names the script, and "noise.npy" does not end in .py\n',
+    ]);
+    expect(readFileSync(join(folder, 'noise.npy')).equals(before)).toBe(true);
+    const step = await cli('export', 'good.fringe.json', '--step', 'nois');
+    expect(step.code).toBe(2);
+    expect(step.err).toMatch(/no step "nois".*noise/);
+    expect((await cli('export', 'broken.fringe.json')).code).toBe(2);
+    writeFileSync(join(folder, 'partly.fringe.json'), recipe({}).replace('"segment":1', '"segment":100'));
+    const partly = await cli('export', 'partly.fringe.json');
+    expect(partly.code).toBe(3);
+    expect(partly.err).toMatch(/^left out: step "noise" \(noise-spectrum\): no segment of 100 s fits/);
+    expect(partly.out).toContain('# Left out: step "noise" (noise-spectrum)');
   });
 });

@@ -25,6 +25,8 @@ export interface LeftOut {
   readonly id: string;
   readonly do: string;
   readonly why: string;
+  /** The step itself did not finish. */
+  readonly failed: boolean;
 }
 
 export interface Script {
@@ -77,7 +79,13 @@ function choose({ cards, registry }: ScriptRequest): { chosen: Chosen[]; leftOut
   const chosen: Chosen[] = [];
   const leftOut: LeftOut[] = [];
   for (const card of cards) {
-    const leave = (why: string): void => void leftOut.push({ id: card.id, do: card.do, why });
+    const leave = (why: string): void =>
+      void leftOut.push({
+        id: card.id,
+        do: card.do,
+        why,
+        failed: card.state === 'failed' || card.state === 'blocked',
+      });
     const missing = card.of.find((name) => leftOut.some((l) => l.id === name));
     if (card.state !== 'done') leave(card.error?.message ?? `the step is ${card.state}`);
     else if (missing !== undefined) leave(`it needs "${missing}", which is left out`);

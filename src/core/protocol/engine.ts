@@ -75,8 +75,13 @@ export interface PythonExport {
   readonly script?: string;
   /** Ids of the steps it computes. */
   readonly steps: readonly string[];
-  /** Steps it leaves out, and why. */
-  readonly leftOut: readonly { readonly id: string; readonly do: string; readonly why: string }[];
+  /** Steps it leaves out, why, and whether the step itself did not finish. */
+  readonly leftOut: readonly {
+    readonly id: string;
+    readonly do: string;
+    readonly why: string;
+    readonly failed: boolean;
+  }[];
   readonly diagnostics: readonly Diagnostic[];
 }
 

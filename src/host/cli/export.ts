@@ -32,8 +32,9 @@ export const exportCommand: Command = {
         `the recipe has no step "${only}".${hint(nearestNames(only, ids)) || ` It has: ${ids.join(', ')}.`}`,
       );
     const target = out === undefined ? undefined : resolve(world.cwd, out);
-    if (target !== undefined && target === recipe.path)
-      throw new UserError('usage', '--out names the recipe itself; give another file', target);
+    // So that a slip of the hand never writes over data or the recipe.
+    if (out !== undefined && !out.endsWith('.py'))
+      throw new UserError('usage', `--out names the script, and "${out}" does not end in .py`, target);
     const dataFolder =
       target === undefined ? '.' : relative(dirname(target), recipe.folder).split(sep).join('/') || '.';
     const engine = await world.engine();
@@ -53,6 +54,6 @@ export const exportCommand: Command = {
       writeAtomically(target, made.script);
       world.err(`wrote ${out}\n`);
     }
-    return EXIT.ok;
+    return made.leftOut.some((l) => l.failed) ? EXIT.failed : EXIT.ok;
   },
 };
