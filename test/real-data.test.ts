@@ -53,4 +53,24 @@ else
       expect(median(145, 155)).toBeLessThan(3e-23);
       expect(peak).toBeGreaterThan(3 * Math.max(median(54, 58), median(62, 66)));
     });
+
+    test('whitened by its own spectrum it is Gaussian with the variance of the band', async () => {
+      const text = JSON.stringify({
+        fringe: 1,
+        inputs: { data: { file, channel: '/strain/Strain' } },
+        steps: [{ id: 'white', do: 'whiten', of: ['data'], high: 1700 }],
+      });
+      const { cards } = await engine.run(
+        { text, folder },
+        { event: () => undefined, cancelled: () => false },
+      );
+      const [card] = cards;
+      expect([card.state, card.error?.message]).toEqual(['done', undefined]);
+      const number = (id: string): number => card.numbers.find((q) => q.id === id)?.value ?? NaN;
+      // 15 segments add 5 %, lines narrower than the filter resolves the rest.
+      expect(number('variance') / number('share')).toBeGreaterThan(1);
+      expect(number('variance') / number('share')).toBeLessThan(1.2);
+      expect(number('p-value')).toBeGreaterThan(0.01);
+      expect(Math.abs(number('kurtosis'))).toBeLessThan(0.1);
+    });
   });

@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest';
+import { whiteStatistics } from '../../src/core/condition/whiten-statistics';
 import { CancelledError } from '../../src/core/data/errors';
 import type { Series, Spectrum } from '../../src/core/data/kinds';
 import noiseSpectrum from '../../src/core/steps/noise-spectrum';
@@ -332,4 +333,20 @@ test('its own spectrum of n segments makes the variance too large by about 0.75/
     expect(Math.abs(excess - 0.75 / segments)).toBeLessThan(0.006 + 0.2 / segments);
     expect(excess).toBeGreaterThan(0.3 / segments);
   }
+});
+
+test('the probability of the distribution test is uniform in Gaussian noise, if slightly large', () => {
+  let [low, middle] = [0, 0];
+  const runs = 1000;
+  for (let seed = 1; seed <= runs; seed++) {
+    const taker = whiteStatistics(2000, 1);
+    taker.take(gaussianNoise(2000, 3, seed));
+    const { pValue } = taker.result();
+    if (pValue < 0.05) low++;
+    if (pValue < 0.5) middle++;
+  }
+  expect(low).toBeLessThan(0.05 * runs + 3 * Math.sqrt(0.05 * runs));
+  expect(low).toBeGreaterThan(0.02 * runs);
+  expect(middle).toBeGreaterThan(0.35 * runs);
+  expect(middle).toBeLessThan(0.55 * runs);
 });

@@ -42,7 +42,7 @@ export function whitenNumbers(f: WhitenFacts): Quantity[] {
       label: 'Variance expected',
       value: design.variance,
       unit: '',
-      convention: '1 when the band is all of 0 to half the rate',
+      convention: 'from the spectrum; an upper limit where it has lines narrower than its own bins',
       explain: {
         ...SOURCE,
         formula: '∫ |W(f)|² S(f) df, W the filter, S the spectrum; density 2/rate in the band',
@@ -61,7 +61,7 @@ export function whitenNumbers(f: WhitenFacts): Quantity[] {
       label: 'Kolmogorov–Smirnov p',
       value: s.pValue,
       unit: '',
-      convention: 'against a Gaussian of mean 0 and the variance expected',
+      convention: 'samples over their own RMS against the unit normal; slightly too large for that',
     },
     { id: 'distance', label: 'Kolmogorov–Smirnov distance', value: s.distance, unit: '' },
     {

@@ -11,7 +11,10 @@ export interface WhiteStatistics {
   readonly variance: number;
   /** Fourth moment over squared variance, less 3. */
   readonly kurtosis: number;
-  /** Kolmogorov–Smirnov distance and probability against a Gaussian of mean 0 and the standard deviation expected. */
+  /**
+   * Kolmogorov–Smirnov distance and probability of the samples, over their own root mean square, against the unit normal. The
+   * probability is slightly too large because the scale is that of the same samples.
+   */
   readonly distance: number;
   readonly pValue: number;
   /** Samples it was made with, and how many lie between one and the next. */
@@ -28,10 +31,9 @@ export interface StatisticsTaker {
  * Moments of all samples, and a Kolmogorov–Smirnov test of every n-th of them.
  *
  * @param total samples that will come
- * @param deviation standard deviation expected
  * @param apart samples between two that may count as independent
  */
-export function whiteStatistics(total: number, deviation: number, apart: number): StatisticsTaker {
+export function whiteStatistics(total: number, apart: number): StatisticsTaker {
   const stride = Math.max(1, Math.ceil(apart - 1e-9), Math.ceil(total / MOST));
   const picked = new Float64Array(Math.ceil(total / stride));
   let filled = 0;
@@ -56,10 +58,11 @@ export function whiteStatistics(total: number, deviation: number, apart: number)
       const [m, s2, s3, s4] = sums.map((s) => s / count);
       const variance = s2 - m * m;
       const fourth = s4 - 4 * m * s3 + 6 * m * m * s2 - 3 * m ** 4;
+      const rms = Math.sqrt(s2);
       const values = picked.subarray(0, filled).sort();
       let distance = 0;
       values.forEach((v, i) => {
-        const p = normalTail(v / deviation, 'lower');
+        const p = normalTail(v / rms, 'lower');
         distance = Math.max(distance, p - i / filled, (i + 1) / filled - p);
       });
       return {

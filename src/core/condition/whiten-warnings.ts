@@ -92,15 +92,16 @@ function coarse({ spectrum, design, reach }: WhitenFacts): Warning[] {
   ];
 }
 
-function lines({ design, reach }: WhitenFacts): Warning[] {
-  const factor = design.variance / design.ideal;
+/** A spectrum makes lines narrower than its bins look wider than they are, so what it leads to must be seen in the data as well. */
+function lines({ design, reach, statistics }: WhitenFacts): Warning[] {
+  const factor = Math.min(design.variance, statistics.variance) / design.ideal;
   if (!(factor > 1 + OFF)) return [];
   const longer = 2 * reach;
   return [
     {
       code: 'lines-not-resolved',
       severity: 'caution',
-      found: `lines narrower than ${withUnit(design.resolution, 'Hz')} or steep slopes pass the filter: the variance must come out ${numberText(factor, 3)} times what a white band has`,
+      found: `lines narrower than ${withUnit(design.resolution, 'Hz')} or steep slopes pass the filter: the variance is ${numberText(statistics.variance / design.ideal, 3)} times that of a white band, up to ${numberText(design.variance / design.ideal, 3)} by the spectrum`,
       value: factor,
       consequence:
         'The result is not white: lines stand above the rest, and neighbouring samples depend on each other.',
@@ -112,17 +113,15 @@ function lines({ design, reach }: WhitenFacts): Warning[] {
 
 function notWhite(f: WhitenFacts): Warning[] {
   const { design, statistics: s } = f;
-  const off = s.variance / design.variance - 1;
-  const error = Math.sqrt(2 / independent(f));
-  // A steady line counts for up to 1.44 times its power in a median spectrum: less than expected is then no news.
-  const byLines = off < 0 && design.variance > (1 + OFF) * design.ideal;
-  if (byLines) return [];
-  if (Math.abs(off) > OFF + 3 * error)
+  const [least, most] = [Math.min(design.ideal, design.variance), Math.max(design.ideal, design.variance)];
+  const slack = OFF + 3 * Math.sqrt(2 / independent(f));
+  const off = s.variance > most ? s.variance / most - 1 : s.variance < least ? s.variance / least - 1 : 0;
+  if (Math.abs(off) > slack)
     return [
       {
         code: 'variance-off',
         severity: 'caution',
-        found: `the variance is ${numberText(s.variance)}, ${numberText(100 * Math.abs(off), 2)} % ${off > 0 ? 'above' : 'below'} the ${numberText(design.variance)} that the spectrum leads to (excess kurtosis ${numberText(s.kurtosis, 3)})`,
+        found: `the variance is ${numberText(s.variance)}, ${numberText(100 * Math.abs(off), 2)} % ${off > 0 ? 'above' : 'below'} the ${numberText(off > 0 ? most : least)} that the spectrum leads to (excess kurtosis ${numberText(s.kurtosis, 3)})`,
         value: s.variance,
         consequence:
           'The spectrum does not describe these data: a transient, a change of the noise, or a spectrum of another time.',
@@ -138,8 +137,8 @@ function notWhite(f: WhitenFacts): Warning[] {
       found: `the samples do not look Gaussian: Kolmogorov–Smirnov p = ${numberText(s.pValue, 2)} (distance ${numberText(s.distance, 2)}, ${s.tested} samples), excess kurtosis ${numberText(s.kurtosis, 3)}`,
       value: s.pValue,
       consequence:
-        'Rates of loud samples counted with a Gaussian are too low, or the level of the noise changes.',
-      remedy: 'See where in time and frequency by the steps stationarity and gaussianity.',
+        'Loud samples are more or less frequent than a Gaussian says, or the level of the noise changes.',
+      remedy: 'See at which frequencies by the step gaussianity, or look for loud samples and gate them.',
     },
   ];
 }

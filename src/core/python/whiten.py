@@ -50,7 +50,7 @@ def whiten(x, rate_hz, start_gps, *spectrum, low_hz, high_hz, reach_s, segment_s
             y[a + half - 1 : b - half + 1] = signal.oaconvolve(x[a:b], taps, mode="valid")
     kept = y[np.isfinite(y)]
     stride = max(1, int(np.ceil(nyquist / (high - low) - 1e-9)), int(np.ceil(len(kept) / 65536)))
-    test = stats.kstest(kept[::stride], stats.norm(scale=np.sqrt(expected)).cdf, mode="auto")
+    test = stats.kstest(kept[::stride], stats.norm(scale=np.sqrt(np.mean(kept**2))).cdf, method="auto")
     return {
         "x": y,
         "rate_hz": rate_hz,

@@ -122,6 +122,8 @@ function sentence(f: GateFacts, low: number | null, high: number | null, margin:
       ? ` Tested: |x − median| over 1.4826 times the median absolute deviation in ${where}, above ${numberText(threshold)}; ` +
         `${counted(search.over, 'sample')} found, each with ${withUnit(margin, 's')} on either side.`
       : '';
+  if (gates.length === 0)
+    return `${from.label}, left as it is: there is nothing to gate.${tested}` + repeated(f.to.notes);
   return (
     `${from.label} brought to zero in ${counted(gates.length, 'span')}, with half-cosine tapers of ${withUnit(taper / rate, 's')} outside of them: ` +
     `${withUnit(touched / rate, 's')} in all, ${numberText(100 * gatedShare(f), 3)} % of the valid data, which stay valid.` +

@@ -71,7 +71,6 @@ export default defineStep({
     );
     const taker = whiteStatistics(
       spanLength(data.valid),
-      Math.sqrt(design.variance),
       series.rate / 2 / (design.band[1] - design.band[0]),
     );
     await sweep(
@@ -128,7 +127,7 @@ function sentence({ from, to, spectrum, design, reach, statistics: s }: WhitenFa
   const [low, high] = design.band;
   return (
     `${from.label} whitened with ${spectrum.label} from ${numberText(low)} to ${withUnit(high, 'Hz')} by a filter symmetric in time (no delay) that reaches ${numberText(reach)} s to either side, ` +
-    `resolution ${withUnit(design.resolution, 'Hz')}: one-sided density 2/rate in the band, so variance 1 over all of 0 to ${withUnit(design.rate / 2, 'Hz')} and ${numberText(design.variance)} over this one; found ${numberText(s.variance)}. ` +
+    `resolution ${withUnit(design.resolution, 'Hz')}: one-sided density 2/rate in the band, so variance 1 over all of 0 to ${withUnit(design.rate / 2, 'Hz')} and ${numberText(design.ideal)} over this band if perfectly white, ${numberText(design.variance)} with what the filter does not resolve; found ${numberText(s.variance)}. ` +
     `${withUnit((design.taps.length - 1) / design.rate, 's')} at each end of a valid span dropped (${withUnit(spanLength(to.valid) / to.rate, 's', 9)} stay).` +
     repeated(to.notes)
   );
