@@ -1,6 +1,9 @@
 import numpy as np
 from scipy import signal, stats
 
+# tolerance p-value: abs 1e-5, because above 1000 samples Fringeside takes an expansion good to 3e-6
+# tolerance kurtosis: abs 1e-9, because it is a difference of nearly equal numbers
+
 
 def whiten(x, rate_hz, start_gps, *spectrum, low_hz, high_hz, reach_s, segment_s):
     """Series divided by its noise: one-sided density 2/rate in the band, variance 1 when the band is 0 to rate/2.
