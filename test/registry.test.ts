@@ -23,6 +23,7 @@ describe('steps = files = docs = tests', () => {
   test('every step has an equivalent in Python, or a reason why not', () => {
     const without: Readonly<Record<string, string>> = {
       'matched-filter': 'being written',
+      lines: 'not written yet',
       consistency: 'being written, needs that of the matched filter',
     };
     expect(ids.filter((id) => !Object.hasOwn(stepSources, id) && !Object.hasOwn(without, id))).toEqual([]);
