@@ -7,6 +7,7 @@ import consistency from './consistency';
 import gate from './gate';
 import gaussianity from './gaussianity';
 import highPass from './high-pass';
+import lines from './lines';
 import matchedFilter from './matched-filter';
 import noiseSpectrum from './noise-spectrum';
 import notch from './notch';
@@ -24,6 +25,7 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   gate: gate,
   gaussianity: gaussianity,
   'high-pass': highPass,
+  lines: lines,
   'matched-filter': matchedFilter,
   'noise-spectrum': noiseSpectrum,
   notch: notch,
