@@ -9,7 +9,11 @@ declare const Plotly: PlotlyLibrary;
 function revive(trace: Trace): Trace {
   const entries = Object.entries(trace).map(([k, v]) => [
     k,
-    Array.isArray(v) ? Float64Array.from(v as (number | null)[], (x) => x ?? NaN) : (v as unknown),
+    k === 'labels' || (trace.type === 'image' && (k === 'x' || k === 'y'))
+      ? (v as unknown)
+      : Array.isArray(v)
+        ? Float64Array.from(v as (number | null)[], (x) => x ?? NaN)
+        : (v as unknown),
   ]);
   return Object.fromEntries(entries) as Trace;
 }

@@ -1,8 +1,14 @@
 import type { JSX } from 'preact';
 import type { Figure } from '../../src/core/figures/figure';
 import { DASHES, markStyle, strokeOf, fillOf, type ThemeKind } from '../../src/core/figures/colours';
+import { mapStrip, type ImageTrace } from '../../src/core/figures/image';
+import { numberText } from '../../src/core/figures/shown-number';
 import type { Readout } from './readout';
 import { axisTitle } from './to-plotly';
+
+/** "Energy, 0 to 20": what the colours say. */
+const imageName = ({ quantity, unit, low, high, scale }: ImageTrace): string =>
+  `${quantity}${unit === '' ? '' : ` [${unit}]`}, ${numberText(low, 3)} to ${numberText(high, 3)}${scale === 'log' ? ', logarithmic' : ''}`;
 
 interface Props {
   readonly figure: Figure;
@@ -21,7 +27,15 @@ export function Legend({ figure, theme, readout }: Props): JSX.Element {
           return (
             <li key={i}>
               <svg class="swatch" viewBox="0 0 22 10" aria-hidden="true">
-                {t.type !== 'line' && <rect x="0" y="1" width="22" height="8" fill={fillOf(t.role, theme)} />}
+                {t.type === 'image' && (
+                  <image href={mapStrip(theme)} width="22" height="10" preserveAspectRatio="none" />
+                )}
+                {t.type === 'points' && (
+                  <circle cx="11" cy="5" r="4" fill="none" stroke={stroke.colour} stroke-width="2" />
+                )}
+                {(t.type === 'range' || t.type === 'bars') && (
+                  <rect x="0" y="1" width="22" height="8" fill={fillOf(t.role, theme)} />
+                )}
                 {t.type === 'line' && (
                   <line
                     x1="0"
@@ -34,7 +48,7 @@ export function Legend({ figure, theme, readout }: Props): JSX.Element {
                   />
                 )}
               </svg>
-              <span class="trace-name">{t.name}</span>
+              <span class="trace-name">{t.type === 'image' ? imageName(t) : t.name}</span>
               {readout?.values[i] !== undefined && <span class="trace-value">{readout.values[i]}</span>}
             </li>
           );

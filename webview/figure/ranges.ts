@@ -41,7 +41,7 @@ export function isWhole(range: Range, axis: Axis): boolean {
 export function valueRange(figure: Figure, x: Range): Range {
   const { y } = figure;
   if (y.range) return y.range;
-  if (figure.traces.some((t) => t.type === 'bars')) return y.extent;
+  if (figure.traces.some((t) => t.type === 'bars' || t.type === 'image')) return y.extent;
   let low = Infinity;
   let high = -Infinity;
   const take = (v: number): void => {
@@ -50,11 +50,11 @@ export function valueRange(figure: Figure, x: Range): Range {
     if (v > high) high = v;
   };
   for (const t of figure.traces) {
-    if (t.type === 'bars') continue;
+    if (t.type === 'bars' || t.type === 'image') continue;
     for (let i = 0; i < t.x.length; i++) {
       const at = t.x[i];
       if (at < x[0] || at > x[1]) continue;
-      if (t.type === 'line') take(t.y[i]);
+      if (t.type === 'line' || t.type === 'points') take(t.y[i]);
       else {
         take(t.low[i]);
         take(t.high[i]);

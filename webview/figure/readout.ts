@@ -1,4 +1,5 @@
 import type { Figure, Trace } from '../../src/core/figures/figure';
+import { loudestInColumn } from '../../src/core/figures/image';
 import { instantAfter } from '../words/instants';
 import { numberText } from '../../src/core/figures/shown-number';
 
@@ -30,6 +31,14 @@ function valueAt(trace: Trace, x: number, unit: string): string | undefined {
   if (trace.type === 'bars') {
     const i = trace.edges.findLastIndex((e) => e <= x);
     return i < 0 || i >= trace.counts.length ? undefined : `${numberText(trace.counts[i])}${ending}`;
+  }
+  if (trace.type === 'points') return undefined;
+  if (trace.type === 'image') {
+    const best = loudestInColumn(
+      trace,
+      Math.floor(((x - trace.x[0]) / (trace.x[1] - trace.x[0])) * trace.columns),
+    );
+    return best && `at most ${numberText(best.value)}${trace.unit === '' ? '' : ` ${trace.unit}`}`;
   }
   const i = nearest(trace.x, x);
   if (i === undefined) return undefined;

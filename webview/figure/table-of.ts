@@ -1,4 +1,5 @@
 import type { Axis, Figure, Trace } from '../../src/core/figures/figure';
+import { loudestInColumn, rowCentre } from '../../src/core/figures/image';
 import type { Cell, Column, Table } from '../../src/core/data/table';
 
 /** The points a figure shows as tables, one per trace: the text alternative, and what is copied as CSV. */
@@ -27,6 +28,27 @@ function traceTable(trace: Trace, index: number, { x, y }: Figure): Table {
           { ...column('high', y), label: `${trace.name}, high` },
         ],
         rows: Array.from(trace.x, (v, i) => [v, value(trace.low[i]), value(trace.high[i])]),
+      };
+    case 'points':
+      return {
+        ...base,
+        columns: [at, column('y', y), { id: 'label', label: 'What', unit: '' }],
+        rows: Array.from(trace.x, (v, i) => [v, trace.y[i], trace.labels[i] ?? '']),
+      };
+    case 'image':
+      return {
+        ...base,
+        title: `${trace.name}: largest value of each column`,
+        columns: [
+          at,
+          { ...column('y', y), label: `${y.label} of it` },
+          { id: 'value', label: trace.quantity, unit: trace.unit },
+        ],
+        rows: Array.from({ length: trace.columns }, (_, i): Cell[] => {
+          const best = loudestInColumn(trace, i);
+          const middle = trace.x[0] + ((i + 0.5) * (trace.x[1] - trace.x[0])) / trace.columns;
+          return [middle, best ? rowCentre(trace, best.row, y.scale) : null, best?.value ?? null];
+        }),
       };
     case 'bars':
       return {

@@ -1,5 +1,6 @@
 import type { Axis, Figure, Mark, Trace } from '../../src/core/figures/figure';
 import { fillOf, markStyle, strokeOf } from '../../src/core/figures/colours';
+import { imageUrl, type ImageTrace } from '../../src/core/figures/image';
 import type { PlotlyLayout, PlotlyTrace } from './plotly-types';
 import { inPlace, valueRange, type Range, type View } from './ranges';
 import type { Theme } from './theme';
@@ -77,7 +78,52 @@ function traceOf(trace: Trace, theme: Theme): PlotlyTrace[] {
         },
       ];
     }
+    case 'points':
+      return [
+        {
+          ...common,
+          type: 'scatter',
+          mode: 'markers',
+          x: trace.x,
+          y: trace.y,
+          marker: { symbol: 'circle-open', size: 12, color: colour, line: { color: colour, width: 2 } },
+        },
+      ];
+    case 'image':
+      // The picture itself is part of the layout; an unseen line along its bottom lets the pointer find its columns.
+      return [
+        {
+          ...common,
+          type: 'scatter',
+          mode: 'lines',
+          x: columnCentres(trace),
+          y: new Float64Array(trace.columns).fill(trace.y[0]),
+          line: { color: 'rgba(0, 0, 0, 0)', width: 1 },
+        },
+      ];
   }
+}
+
+/** Middle of each column of an image in axis units; time axes are linear. */
+function columnCentres({ x: [from, to], columns }: ImageTrace): Float64Array {
+  return Float64Array.from({ length: columns }, (_, i) => from + ((i + 0.5) * (to - from)) / columns);
+}
+
+/** An image in the plane of the axes, behind everything else. */
+function pictureIn(trace: ImageTrace, { x, y }: Figure, theme: Theme): Record<string, unknown> {
+  const [left, right] = inPlace(trace.x, x);
+  const [bottom, top] = inPlace(trace.y, y);
+  return {
+    source: imageUrl(trace, theme.kind),
+    xref: 'x',
+    yref: 'y',
+    x: left,
+    y: top,
+    sizex: right - left,
+    sizey: top - bottom,
+    sizing: 'stretch',
+    layer: 'below',
+  };
 }
 
 /** Closed outlines, one per unbroken stretch, since a fill between two lines bridges their gaps. */
@@ -139,6 +185,7 @@ function layoutOf(
     },
     yaxis: { ...axisOf(figure.y, inPlace(y, figure.y), theme, valueTitle), showspikes: false },
     shapes: figure.marks.map((m) => shapeOf(m, theme)),
+    images: figure.traces.flatMap((t) => (t.type === 'image' ? [pictureIn(t, figure, theme)] : [])),
   };
 }
 

@@ -121,7 +121,26 @@ export interface TimeFrequencyMap {
   readonly quantity: string;
   readonly unit: string;
   readonly planes: readonly MapPlane[];
-  readonly spoilt: readonly Span[];
+  /** Stretches without valid data, in seconds after `start`. */
+  readonly holes: readonly { readonly from: number; readonly to: number }[];
+  /** Input it derives from. */
+  readonly channel: string;
+  readonly notes?: readonly string[];
+  /** Of a constant-Q map: the loudest tiles, loudest first, and how many tiles were tried. */
+  readonly loud?: readonly LoudTile[];
+  readonly trials?: number;
+}
+
+/** A tile of a constant-Q map that stands out. */
+export interface LoudTile {
+  /** Seconds after the start of the map. */
+  readonly time: number;
+  /** Hz */
+  readonly frequency: number;
+  /** Frequency over the standard deviation of the squared window in frequency. */
+  readonly q: number;
+  /** Mean 1 and exponential in Gaussian noise. */
+  readonly energy: number;
 }
 
 export interface MapPlane {

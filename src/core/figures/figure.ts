@@ -50,6 +50,38 @@ export type Trace =
       readonly role: TraceRole;
       readonly edges: Float64Array;
       readonly counts: Float64Array;
+    }
+  /**
+   * Values over the plane in cells that are even along both axes as they are drawn (on a logarithmic axis: even in its
+   * logarithm). NaN where there is none.
+   */
+  | {
+      readonly type: 'image';
+      readonly name: string;
+      readonly role: TraceRole;
+      /** Edges of the picture in axis units. */
+      readonly x: readonly [number, number];
+      readonly y: readonly [number, number];
+      readonly columns: number;
+      readonly rows: number;
+      /** Row by row, the lowest first. */
+      readonly values: Float32Array;
+      /** What a value is, its unit, and the values at the ends of the colour map. */
+      readonly quantity: string;
+      readonly unit: string;
+      readonly low: number;
+      readonly high: number;
+      readonly scale: 'linear' | 'log';
+    }
+  /** Single places that mean something, drawn as open rings. */
+  | {
+      readonly type: 'points';
+      readonly name: string;
+      readonly role: TraceRole;
+      readonly x: Float64Array;
+      readonly y: Float64Array;
+      /** What each is. */
+      readonly labels: readonly string[];
     };
 
 /** A stretch of the x axis that means something: a gap, a cropped edge, the span of a candidate. */

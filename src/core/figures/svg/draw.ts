@@ -1,5 +1,6 @@
 import { DASHES, fillOf, markStyle, strokeOf, type ThemeKind } from '../colours';
 import type { Figure, Mark, Trace } from '../figure';
+import { imageUrl } from '../image';
 import type { Placed } from './place';
 
 export interface Frame {
@@ -32,6 +33,20 @@ function trace(t: Trace, frame: Frame): string {
     case 'range': {
       const d = runs(t.x, t.high, frame, t.low).map((run) => `M${run.join('L')}Z`);
       return `<path d="${d.join('')}" fill="${fillOf(t.role, frame.kind)}" stroke="none"/>`;
+    }
+    case 'points': {
+      const rings = Array.from(t.x, (v, i) => {
+        const [cx, cy] = [frame.x.at(v), frame.y.at(t.y[i])];
+        return Number.isFinite(cx) && Number.isFinite(cy)
+          ? `<circle cx="${px(cx)}" cy="${px(cy)}" r="6"/>`
+          : '';
+      });
+      return `<g fill="none" stroke="${colour}" stroke-width="2">${rings.join('')}</g>`;
+    }
+    case 'image': {
+      const [a, b] = [frame.x.at(t.x[0]), frame.x.at(t.x[1])];
+      const [bottom, top] = [frame.y.at(t.y[0]), frame.y.at(t.y[1])];
+      return `<image href="${imageUrl(t, frame.kind)}" x="${px(a)}" y="${px(top)}" width="${px(b - a)}" height="${px(bottom - top)}" preserveAspectRatio="none" image-rendering="pixelated"/>`;
     }
     case 'bars': {
       const floor = frame.y.at(Math.max(0, frame.y.range[0]));
