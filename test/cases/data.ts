@@ -10,7 +10,14 @@ export interface CaseData {
 
 type Part =
   | { readonly kind: 'white'; readonly sigma: number; readonly seed: number }
-  | { readonly kind: 'sine'; readonly amplitude: number; readonly frequency: number };
+  | {
+      readonly kind: 'sine';
+      readonly amplitude: number;
+      readonly frequency: number;
+      /** Seconds; the whole length without them. */
+      readonly from?: number;
+      readonly to?: number;
+    };
 type Defect =
   /** Seconds. */
   | { readonly kind: 'missing'; readonly from: number; readonly to: number }
@@ -31,7 +38,7 @@ export function makeSamples({ rate, seconds, parts, defects = [] }: CaseData): F
     for (let i = 0; i < x.length; i++) {
       x[i] += add
         ? add[i]
-        : part.kind === 'sine'
+        : part.kind === 'sine' && i >= (part.from ?? 0) * rate && i < (part.to ?? Infinity) * rate
           ? part.amplitude * Math.sin((2 * Math.PI * part.frequency * i) / rate)
           : 0;
     }
