@@ -2,6 +2,7 @@
 import stepBandPass from './band-pass.py';
 import stepCoherence from './coherence.py';
 import stepCompareNoise from './compare-noise.py';
+import stepConstantQMap from './constant-q-map.py';
 import stepGate from './gate.py';
 import stepGaussianity from './gaussianity.py';
 import stepHighPass from './high-pass.py';
@@ -10,6 +11,7 @@ import stepNotch from './notch.py';
 import stepOverview from './overview.py';
 import stepReferenceNoise from './reference-noise.py';
 import stepResample from './resample.py';
+import stepSpectrogram from './spectrogram.py';
 import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
 import sharedFilterValidRuns from './shared/filter_valid_runs.py';
@@ -27,7 +29,9 @@ import sharedRingingS from './shared/ringing_s.py';
 import sharedRobustWidth from './shared/robust_width.py';
 import sharedSegmentStarts from './shared/segment_starts.py';
 import sharedSegmentTransforms from './shared/segment_transforms.py';
+import sharedSmoothLength from './shared/smooth_length.py';
 import sharedValidRuns from './shared/valid_runs.py';
+import sharedWhiteningFilter from './shared/whitening_filter.py';
 import readersHdf5 from './readers/hdf5.py';
 import readersNpy from './readers/npy.py';
 import readersNpz from './readers/npz.py';
@@ -42,6 +46,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   'band-pass': stepBandPass,
   coherence: stepCoherence,
   'compare-noise': stepCompareNoise,
+  'constant-q-map': stepConstantQMap,
   gate: stepGate,
   gaussianity: stepGaussianity,
   'high-pass': stepHighPass,
@@ -50,6 +55,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   overview: stepOverview,
   'reference-noise': stepReferenceNoise,
   resample: stepResample,
+  spectrogram: stepSpectrogram,
   whiten: stepWhiten,
 };
 
@@ -71,7 +77,9 @@ export const shared: Readonly<Record<string, string>> = {
   robust_width: sharedRobustWidth,
   segment_starts: sharedSegmentStarts,
   segment_transforms: sharedSegmentTransforms,
+  smooth_length: sharedSmoothLength,
   valid_runs: sharedValidRuns,
+  whitening_filter: sharedWhiteningFilter,
 };
 
 /** Readers of data files, by format. */

@@ -4,6 +4,7 @@ import bandPass from './band-pass';
 import coherence from './coherence';
 import compareNoise from './compare-noise';
 import consistency from './consistency';
+import constantQMap from './constant-q-map';
 import gate from './gate';
 import gaussianity from './gaussianity';
 import highPass from './high-pass';
@@ -14,6 +15,7 @@ import notch from './notch';
 import overview from './overview';
 import referenceNoise from './reference-noise';
 import resample from './resample';
+import spectrogram from './spectrogram';
 import whiten from './whiten';
 
 /** Every step, by id. */
@@ -22,6 +24,7 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   coherence: coherence,
   'compare-noise': compareNoise,
   consistency: consistency,
+  'constant-q-map': constantQMap,
   gate: gate,
   gaussianity: gaussianity,
   'high-pass': highPass,
@@ -32,5 +35,6 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   overview: overview,
   'reference-noise': referenceNoise,
   resample: resample,
+  spectrogram: spectrogram,
   whiten: whiten,
 };
