@@ -352,6 +352,69 @@ export interface SampleStats {
   readonly rms: number;
 }
 
+/** Templates placed so that any signal of a mass region loses little to the nearest one. */
+export interface TemplateBank {
+  readonly kind: 'bank';
+  readonly label: string;
+  /** Band the metric was taken over and the frequency f₀ chirp times are stated at, in Hz. */
+  readonly low: number;
+  readonly high: number;
+  readonly referenceFrequency: number;
+  /** Least overlap wanted between a signal of the region and its best template. */
+  readonly minimalMatch: number;
+  /** g_ij in (τ₀, τ₃), 1/s²: mismatch = g_ij Δτ^i Δτ^j. Owen & Sathyaprakash 1999. */
+  readonly metric: readonly [g00: number, g03: number, g33: number];
+  /** One value per template: masses in M☉ (mass1 ≥ mass2, detector frame) and chirp times in s. */
+  readonly mass1: Float64Array;
+  readonly mass2: Float64Array;
+  readonly tau0: Float64Array;
+  readonly tau3: Float64Array;
+  /** Outline of the region in chirp times, closed. */
+  readonly outline: { readonly tau0: Float64Array; readonly tau3: Float64Array };
+}
+
+/** A place where some template of a bank stands out, one per cluster. */
+export interface Trigger {
+  readonly time: GpsTime;
+  readonly snr: number;
+  /** Radians, as of the matched filter at that time. */
+  readonly phase: number;
+  /** Index into the bank, and what it stands for: M☉ and seconds. */
+  readonly template: number;
+  readonly mass1: number;
+  readonly mass2: number;
+  readonly tau0: number;
+  readonly tau3: number;
+  /** SNR of the template at 1 Mpc, optimally placed, and the distance in Mpc that gives `snr`. */
+  readonly sigma: number;
+  readonly effectiveDistance: number;
+  readonly chiSquared: number;
+  /** Degrees of freedom of `chiSquared`. */
+  readonly freedom: number;
+  readonly reweighted: number;
+}
+
+/** What a bank finds in the data of one site, in order of time. */
+export interface TriggerList {
+  readonly kind: 'triggers';
+  readonly label: string;
+  readonly channel: string;
+  readonly rate: number;
+  readonly start: GpsTime;
+  readonly startUnknown?: boolean;
+  readonly length: number;
+  /** Samples searched: the time in which a trigger could have been found. */
+  readonly valid: readonly Span[];
+  /** Seconds in `valid`. */
+  readonly livetime: number;
+  readonly threshold: number;
+  /** Seconds: no two triggers are closer. */
+  readonly window: number;
+  readonly templates: number;
+  readonly triggers: readonly Trigger[];
+  readonly notes?: readonly string[];
+}
+
 /** Every kind of data a step can give or take; steps that come later add theirs here. */
 export interface DataKinds {
   series: Series;
@@ -365,6 +428,8 @@ export interface DataKinds {
   snr: SnrSeries;
   consistency: Consistency;
   waveform: Waveform;
+  bank: TemplateBank;
+  triggers: TriggerList;
 }
 
 export type DataKind = keyof DataKinds;
