@@ -18,6 +18,8 @@ const KIND_WORDS: Record<DataKind, string> = {
   snr: 'a signal-to-noise series',
   consistency: 'a consistency check',
   waveform: 'a waveform',
+  bank: 'a template bank',
+  triggers: 'a list of triggers',
 };
 
 export const kindWords = (kind: DataKind): string => KIND_WORDS[kind];
