@@ -23,6 +23,7 @@ describe('steps = files = docs = tests', () => {
   test('every step has an equivalent in Python, or a reason why not', () => {
     const without: Readonly<Record<string, string>> = {
       'matched-filter': 'being written',
+      waveform: 'being written',
       lines: 'not written yet',
       consistency: 'being written, needs that of the matched filter',
     };
