@@ -54,7 +54,7 @@ describe.each(Object.values(steps))('$id', (step) => {
     expect(step.summary).toMatch(/^[A-Z].*\.$/);
     expect(step.sources.length).toBeGreaterThan(0);
     for (const [key, p] of Object.entries(step.params)) {
-      expect(key).toMatch(/^[a-z][a-z-]*$/);
+      expect(key).toMatch(/^[a-z][a-z0-9-]*$/);
       expect(p.help, key).toMatch(/\.$/);
       expect(['id', 'do', 'of', 'off']).not.toContain(key);
       if (p.kind === 'choice') expect(p.choices).toContain(p.default);
