@@ -16,6 +16,7 @@ import overview from './overview';
 import referenceNoise from './reference-noise';
 import resample from './resample';
 import spectrogram from './spectrogram';
+import waveform from './waveform';
 import whiten from './whiten';
 
 /** Every step, by id. */
@@ -36,5 +37,6 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   'reference-noise': referenceNoise,
   resample: resample,
   spectrogram: spectrogram,
+  waveform: waveform,
   whiten: whiten,
 };
