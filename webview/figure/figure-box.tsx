@@ -5,6 +5,7 @@ import { Legend } from './legend';
 import { pictureOf } from './picture';
 import { Plot } from './plot';
 import { keyAction } from './keys';
+import type { Range } from './ranges';
 import type { Readout } from './readout';
 import { DataTable } from './table';
 import { tablesOf } from './table-of';
@@ -27,6 +28,8 @@ interface Props {
   /** Shown as text from the start, and told when that changes, so it survives a rebuilt page. */
   readonly asText: boolean;
   readonly onAsText: (asText: boolean) => void;
+  /** What is offered for the stretch of the x axis that a zoomed figure shows. */
+  readonly underPlot?: (x: Range) => JSX.Element;
   /** The result the figure belongs to; a new one must be asked for the view again. */
   readonly result: string;
 }
@@ -126,6 +129,7 @@ export function FigureBox(p: Props): JSX.Element {
           onLeave={p.onLeave}
         />
       )}
+      {view.x && p.underPlot?.(view.x)}
       <figcaption id={caption}>{figure.caption}</figcaption>
     </figure>
   );

@@ -9,7 +9,9 @@ import { AskRate } from './ask-rate';
 import { CardMenu } from './card-menu';
 import { useLook } from './context';
 import { Details } from './details';
+import { nextSteps, spanSteps } from './next-steps';
 import { Numbers } from './numbers';
+import { Offers } from './offers';
 import { ParamForm } from './param-form';
 import { figureKey } from './state';
 import { Warnings } from './warnings';
@@ -23,7 +25,7 @@ interface Props {
 
 /** A step: sentence, pictures, numbers, warnings, parameters. */
 function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
-  const { isOpen, setOpen, post, copy, views, requests } = useLook();
+  const { isOpen, setOpen, post, copy, views, requests, names, steps } = useLook();
   const { id, card, state } = view;
   const collapsed = isOpen('collapsed', id);
   const isShown = state !== 'off' && card !== undefined && card.state === 'done';
@@ -107,6 +109,12 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
                       onCopy={copy}
                       onPicture={(svg) => post({ type: 'save-picture', name: `${id}-${f.id}`, svg })}
                       onLeave={toCard}
+                      underPlot={(x) => (
+                        <Offers
+                          word="With this stretch:"
+                          offers={spanSteps(view, f.x, x, names, new Set(steps.keys()))}
+                        />
+                      )}
                       asText={isOpen('asText', key)}
                       onAsText={(on) => setOpen('asText', key, on)}
                     />
@@ -116,6 +124,7 @@ function CardBody({ view, redrawn, index, count }: Props): JSX.Element {
                   <DataTable key={t.id} table={t} onCopy={copy} />
                 ))}
               </div>
+              <Offers word="Go on with:" offers={nextSteps(view, names, steps.values())} />
               {card.numbers.length > 0 && <Numbers numbers={card.numbers} step={id} />}
             </div>
           )}

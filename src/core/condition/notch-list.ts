@@ -1,7 +1,7 @@
 import { UserError } from '../data/errors';
 import type { LineList } from '../data/kinds';
 import { numberText } from '../figures/number-text';
-import { notch, notchRinging } from '../kernels/notch';
+import { notch } from '../kernels/notch';
 import type { SectionRows } from '../kernels/kernels';
 
 /** More notches than this are a comb that no data survive. */
@@ -80,7 +80,3 @@ export function planNotches(request: NotchRequest): NotchPlan {
     rows: places.map((p) => notch(p.frequency, p.q, rate)),
   };
 }
-
-/** Seconds until the slowest of the notches has rung down to 1 %. */
-export const longestRinging = (places: readonly NotchPlace[]): number =>
-  Math.max(0, ...places.map((p) => notchRinging(p.frequency, p.q)));

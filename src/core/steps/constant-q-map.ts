@@ -4,7 +4,7 @@ import type { TimeFrequencyMap } from '../data/kinds';
 import { mapFigure } from '../figures/map';
 import { counted, numberText, repeated, withUnit } from '../figures/number-text';
 import { ownSpectrum } from '../noise/own-spectrum';
-import { loudTiles, meanEnergy, tileCount, tileSnr } from '../picture/loud-tiles';
+import { chanceOf, loudTiles, meanEnergy, tileCount, tileSnr } from '../picture/loud-tiles';
 import { mapSpan } from '../picture/map-span';
 import { Q_PARAMS } from '../picture/q-params';
 import { qNumbers, qTable, qWarnings, type QFacts } from '../picture/q-report';
@@ -146,12 +146,14 @@ export default defineStep({
         plane,
         range: [0, Math.max(COLOURS[0], Math.min(COLOURS[1], 0.6 * (first?.energy ?? 0)))],
         scale: 'linear',
-        points: loud.map((t) => ({
-          time: t.time,
-          frequency: t.frequency,
-          label: `energy ${numberText(t.energy, 3)} at ${numberText(t.time, 6)} s, ${numberText(t.frequency, 4)} Hz, Q ${numberText(t.q, 3)}`,
-        })),
-        pointsName: 'loudest tiles of all Q',
+        points: loud
+          .filter((t, i) => i === 0 || chanceOf(t.energy, data.trials ?? 1) < 0.5)
+          .map((t) => ({
+            time: t.time,
+            frequency: t.frequency,
+            label: `energy ${numberText(t.energy, 3)} at ${numberText(t.time, 6)} s, ${numberText(t.frequency, 4)} Hz, Q ${numberText(t.q, 3)}`,
+          })),
+        pointsName: 'tiles that stand out, of all Q',
         marks: data.holes.map((h) => ({
           role: 'gap',
           ...h,

@@ -11,8 +11,5 @@ export const SUN_SECONDS = GM_SUN / LIGHT ** 3;
 export const MPC_SECONDS = MPC / LIGHT;
 /** Euler's γ. */
 export const EULER_GAMMA = 0.5772156649015329;
-/** km/s, for the Hubble constant. */
-export const LIGHT_KM_S = LIGHT / 1000;
-
 /** For `explain` of numbers that rest on these. */
 export const CONSTANTS_SOURCE = 'GM☉ = 1.3271244e20 m³/s² (IAU 2015 B3, READ), c exact';

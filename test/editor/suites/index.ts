@@ -4,6 +4,7 @@ import { largeFileSuite } from './large-file';
 import { demoSuite, lookSuite } from './look';
 import { looksViewSuite } from './looks-view';
 import { missingRateSuite } from './missing-rate';
+import { picturesSuite } from './pictures';
 import { workbenchSuite } from './workbench';
 
 /** Every suite, in the order of the run. */
@@ -13,6 +14,7 @@ export const suites: readonly EditorSuite[] = [
   missingRateSuite,
   lookSuite,
   demoSuite,
+  picturesSuite,
   looksViewSuite,
   largeFileSuite,
 ];
