@@ -3,14 +3,17 @@ import stepBandPass from './band-pass.py';
 import stepCoherence from './coherence.py';
 import stepCompareNoise from './compare-noise.py';
 import stepConstantQMap from './constant-q-map.py';
+import stepExpectedSnr from './expected-snr.py';
 import stepGate from './gate.py';
 import stepGaussianity from './gaussianity.py';
 import stepHighPass from './high-pass.py';
 import stepNoiseSpectrum from './noise-spectrum.py';
 import stepNotch from './notch.py';
 import stepOverview from './overview.py';
+import stepReach from './reach.py';
 import stepReferenceNoise from './reference-noise.py';
 import stepResample from './resample.py';
+import stepSignalOverNoise from './signal-over-noise.py';
 import stepSpectrogram from './spectrogram.py';
 import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
@@ -30,6 +33,7 @@ import sharedRobustWidth from './shared/robust_width.py';
 import sharedSegmentStarts from './shared/segment_starts.py';
 import sharedSegmentTransforms from './shared/segment_transforms.py';
 import sharedSmoothLength from './shared/smooth_length.py';
+import sharedSnrParts from './shared/snr_parts.py';
 import sharedValidRuns from './shared/valid_runs.py';
 import sharedWhiteningFilter from './shared/whitening_filter.py';
 import readersHdf5 from './readers/hdf5.py';
@@ -47,14 +51,17 @@ export const stepSources: Readonly<Record<string, string>> = {
   coherence: stepCoherence,
   'compare-noise': stepCompareNoise,
   'constant-q-map': stepConstantQMap,
+  'expected-snr': stepExpectedSnr,
   gate: stepGate,
   gaussianity: stepGaussianity,
   'high-pass': stepHighPass,
   'noise-spectrum': stepNoiseSpectrum,
   notch: stepNotch,
   overview: stepOverview,
+  reach: stepReach,
   'reference-noise': stepReferenceNoise,
   resample: stepResample,
+  'signal-over-noise': stepSignalOverNoise,
   spectrogram: stepSpectrogram,
   whiten: stepWhiten,
 };
@@ -78,6 +85,7 @@ export const shared: Readonly<Record<string, string>> = {
   segment_starts: sharedSegmentStarts,
   segment_transforms: sharedSegmentTransforms,
   smooth_length: sharedSmoothLength,
+  snr_parts: sharedSnrParts,
   valid_runs: sharedValidRuns,
   whitening_filter: sharedWhiteningFilter,
 };

@@ -5,6 +5,7 @@ import coherence from './coherence';
 import compareNoise from './compare-noise';
 import consistency from './consistency';
 import constantQMap from './constant-q-map';
+import expectedSnr from './expected-snr';
 import gate from './gate';
 import gaussianity from './gaussianity';
 import highPass from './high-pass';
@@ -13,8 +14,10 @@ import matchedFilter from './matched-filter';
 import noiseSpectrum from './noise-spectrum';
 import notch from './notch';
 import overview from './overview';
+import reach from './reach';
 import referenceNoise from './reference-noise';
 import resample from './resample';
+import signalOverNoise from './signal-over-noise';
 import spectrogram from './spectrogram';
 import waveform from './waveform';
 import whiten from './whiten';
@@ -26,6 +29,7 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   'compare-noise': compareNoise,
   consistency: consistency,
   'constant-q-map': constantQMap,
+  'expected-snr': expectedSnr,
   gate: gate,
   gaussianity: gaussianity,
   'high-pass': highPass,
@@ -34,8 +38,10 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   'noise-spectrum': noiseSpectrum,
   notch: notch,
   overview: overview,
+  reach: reach,
   'reference-noise': referenceNoise,
   resample: resample,
+  'signal-over-noise': signalOverNoise,
   spectrogram: spectrogram,
   waveform: waveform,
   whiten: whiten,
