@@ -13,9 +13,7 @@ export const noticesPath = join(root, 'dist/THIRD-PARTY-NOTICES.txt');
 /** Collects and writes the notices; throws when a package carries no licence text. */
 export function writeNotices() {
   const parts = bundledPackages().map((name) => {
-    const { version, license } = JSON.parse(
-      readFileSync(join(root, 'node_modules', name, 'package.json'), 'utf8'),
-    );
+    const { version, license } = manifest(name);
     return `${name} ${version} (${license})\n\n${licenceText(name).trim()}\n`;
   });
   mkdirSync(dirname(noticesPath), { recursive: true });
@@ -38,8 +36,14 @@ function bundledPackages() {
     }
   const build = readFileSync(join(root, 'esbuild.config.mjs'), 'utf8');
   for (const [, path] of build.matchAll(/node_modules\/([^'"`]+)/g)) add(path);
+  // What these packages import themselves goes into the bundles with them.
+  for (const name of names)
+    for (const inner of compiledIn.includes(name) ? [] : Object.keys(manifest(name).dependencies ?? {}))
+      if (existsSync(join(root, 'node_modules', inner))) names.add(inner);
   return [...names].sort();
 }
+
+const manifest = (name) => JSON.parse(readFileSync(join(root, 'node_modules', name, 'package.json'), 'utf8'));
 
 /** A package's licence and notice files, or the licence section of its readme. */
 function licenceText(name) {

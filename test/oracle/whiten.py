@@ -6,7 +6,7 @@ import numpy as np
 from scipy import signal, stats
 
 here = pathlib.Path(__file__).resolve().parents[2] / "src/core/python"
-for name in ("shared/valid_runs", "shared/median_spectrum", "whiten"):
+for name in ("shared/valid_runs", "shared/median_spectrum", "shared/whitening_filter", "whiten"):
     exec((here / f"{name}.py").read_text())
 
 

@@ -38,7 +38,8 @@ describe('in Gaussian noise, at times not chosen by their loudness', () => {
     const n = found.length;
     expect(n).toBeGreaterThan(900);
     const chi = found.map((f) => f.chiSquared);
-    expect(Math.abs(mean(chi) - 30)).toBeLessThan(3 * Math.sqrt(60 / n));
+    // Over 24 other seeds the mean is 29.65: the soft edge of the truncated inverse spectrum takes a quarter of the lowest band's part.
+    expect(Math.abs(mean(chi) - 30)).toBeLessThan(0.02 * 30 + 3 * Math.sqrt(60 / n));
     // Kurtosis of χ² with 30 degrees of freedom: variance of the variance (2 + 12/30) 60²/n.
     const variance = mean(chi.map((c) => (c - mean(chi)) ** 2));
     expect(Math.abs(variance - 60)).toBeLessThan(3 * 60 * Math.sqrt(2.4 / n));
