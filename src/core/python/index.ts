@@ -15,6 +15,7 @@ import stepReferenceNoise from './reference-noise.py';
 import stepResample from './resample.py';
 import stepSignalOverNoise from './signal-over-noise.py';
 import stepSpectrogram from './spectrogram.py';
+import stepStationarity from './stationarity.py';
 import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
 import sharedFilterValidRuns from './shared/filter_valid_runs.py';
@@ -63,6 +64,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   resample: stepResample,
   'signal-over-noise': stepSignalOverNoise,
   spectrogram: stepSpectrogram,
+  stationarity: stepStationarity,
   whiten: stepWhiten,
 };
 

@@ -19,6 +19,7 @@ import referenceNoise from './reference-noise';
 import resample from './resample';
 import signalOverNoise from './signal-over-noise';
 import spectrogram from './spectrogram';
+import stationarity from './stationarity';
 import waveform from './waveform';
 import whiten from './whiten';
 
@@ -43,6 +44,7 @@ export const steps: Readonly<Record<string, AnyStep>> = {
   resample: resample,
   'signal-over-noise': signalOverNoise,
   spectrogram: spectrogram,
+  stationarity: stationarity,
   waveform: waveform,
   whiten: whiten,
 };
