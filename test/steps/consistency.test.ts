@@ -1,13 +1,19 @@
-import { describe, expect, test } from 'vitest';
-import { createKernels } from '../../src/core/kernels/kernels';
+import { beforeAll, describe, expect, test } from 'vitest';
+import type { Kernels } from '../../src/core/kernels/kernels';
 import { checkPeak, planConsistency } from '../../src/core/search/consistency-peak';
 import consistency from '../../src/core/steps/consistency';
 import matchedFilter from '../../src/core/steps/matched-filter';
 import type { SnrSeries, Waveform } from '../../src/core/data/kinds';
+import { BUILD_TIME, loadKernels } from '../kernels/load-kernels';
 import { addWave } from '../search/inject-wave';
 import { burst, inspiral, spectrumOf } from '../search/waves';
 import { runStep } from './run-step';
 import { gaussianNoise, seriesOf } from './synthetic';
+
+let kernels: Kernels;
+beforeAll(async () => {
+  ({ wasm: kernels } = await loadKernels());
+}, BUILD_TIME);
 
 const rate = 1024;
 const S = 1e-46;
@@ -16,7 +22,8 @@ const noise = (seconds: number, seed: number): Float64Array =>
   gaussianNoise(seconds * rate, Math.sqrt((S * rate) / 2), seed);
 const template = inspiral(1e-4, 1e-22);
 const filtered = async (samples: Float64Array, wave: Waveform = template): Promise<SnrSeries> =>
-  (await runStep(matchedFilter, [seriesOf(samples, rate), wave, white], { reach: 1 })).outcome.data;
+  (await runStep(matchedFilter, [seriesOf(samples, rate), wave, white], { reach: 1, block: 16 }, { kernels }))
+    .outcome.data;
 
 /** σ of a wave in white noise, from the step itself. */
 const sigmaOf = async (wave: Waveform): Promise<number> =>
@@ -26,7 +33,6 @@ const mean = (x: readonly number[]): number => x.reduce((s, v) => s + v, 0) / x.
 
 describe('in Gaussian noise, at times not chosen by their loudness', () => {
   test('χ² has mean 2p − 2 and variance 4p − 4, p values and shape ratios are as they should be', async () => {
-    const kernels = createKernels(undefined);
     const found = [];
     for (let seed = 1; seed <= 4; seed++) {
       const snr = await filtered(noise(256, 40 + seed));
