@@ -34,7 +34,9 @@ else {
     await writeDemo(work);
     const text = readFileSync(join(work, 'demo.fringe.json'), 'utf8');
     const made = await engine.exportPython({ text, folder: work, dataFolder: '.' }, quiet);
-    expect(made.leftOut).toEqual([]);
+    // What is still without an equivalent (see the registry test), and what needs it.
+    const without = ['lines', 'waveform', 'expected-snr', 'matched-filter', 'consistency'];
+    expect(made.leftOut.filter((s) => !without.includes(s.do))).toEqual([]);
     expect(made.script).toContain('dependencies = ["numpy>=1.24", "scipy>=1.10", "h5py"]');
     writeFileSync(join(work, 'look.py'), made.script!);
     const ran = runPython(python, ['look.py'], work);

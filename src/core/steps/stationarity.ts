@@ -41,7 +41,7 @@ export default defineStep({
       each: 2,
       default: [20, 60, 60, 300, 300, 1000],
       min: 0,
-      help: 'Bands whose power is followed, as pairs of Hz. What reaches half the sample rate is cut there; bands wholly above are left out.',
+      help: 'Bands whose power is followed, as pairs of Hz. What reaches half the sample rate is cut there; bands wholly above are left out. A line much narrower than 1/segment rings on from segment to segment and scatters more by itself: choose bands between strong lines, or take them out first.',
     },
     stride: {
       kind: 'number',
