@@ -22,10 +22,7 @@ describe('steps = files = docs = tests', () => {
 
   test('every step has an equivalent in Python, or a reason why not', () => {
     const without: Readonly<Record<string, string>> = {
-      'matched-filter': 'being written',
-      waveform: 'being written',
       lines: 'not written yet',
-      consistency: 'being written, needs that of the matched filter',
     };
     expect(ids.filter((id) => !Object.hasOwn(stepSources, id) && !Object.hasOwn(without, id))).toEqual([]);
     expect(Object.keys(stepSources).filter((id) => !ids.includes(id))).toEqual([]);
