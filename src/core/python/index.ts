@@ -2,11 +2,13 @@
 import stepBandPass from './band-pass.py';
 import stepCoherence from './coherence.py';
 import stepCompareNoise from './compare-noise.py';
+import stepConsistency from './consistency.py';
 import stepConstantQMap from './constant-q-map.py';
 import stepExpectedSnr from './expected-snr.py';
 import stepGate from './gate.py';
 import stepGaussianity from './gaussianity.py';
 import stepHighPass from './high-pass.py';
+import stepMatchedFilter from './matched-filter.py';
 import stepNoiseSpectrum from './noise-spectrum.py';
 import stepNotch from './notch.py';
 import stepOverview from './overview.py';
@@ -16,6 +18,7 @@ import stepResample from './resample.py';
 import stepSignalOverNoise from './signal-over-noise.py';
 import stepSpectrogram from './spectrogram.py';
 import stepStationarity from './stationarity.py';
+import stepWaveform from './waveform.py';
 import stepWhiten from './whiten.py';
 import sharedDetrendedBins from './shared/detrended_bins.py';
 import sharedFilterValidRuns from './shared/filter_valid_runs.py';
@@ -35,6 +38,7 @@ import sharedSegmentStarts from './shared/segment_starts.py';
 import sharedSegmentTransforms from './shared/segment_transforms.py';
 import sharedSmoothLength from './shared/smooth_length.py';
 import sharedSnrParts from './shared/snr_parts.py';
+import sharedTruncatedInverse from './shared/truncated_inverse.py';
 import sharedValidRuns from './shared/valid_runs.py';
 import sharedWhiteningFilter from './shared/whitening_filter.py';
 import readersHdf5 from './readers/hdf5.py';
@@ -51,11 +55,13 @@ export const stepSources: Readonly<Record<string, string>> = {
   'band-pass': stepBandPass,
   coherence: stepCoherence,
   'compare-noise': stepCompareNoise,
+  consistency: stepConsistency,
   'constant-q-map': stepConstantQMap,
   'expected-snr': stepExpectedSnr,
   gate: stepGate,
   gaussianity: stepGaussianity,
   'high-pass': stepHighPass,
+  'matched-filter': stepMatchedFilter,
   'noise-spectrum': stepNoiseSpectrum,
   notch: stepNotch,
   overview: stepOverview,
@@ -65,6 +71,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   'signal-over-noise': stepSignalOverNoise,
   spectrogram: stepSpectrogram,
   stationarity: stepStationarity,
+  waveform: stepWaveform,
   whiten: stepWhiten,
 };
 
@@ -88,6 +95,7 @@ export const shared: Readonly<Record<string, string>> = {
   segment_transforms: sharedSegmentTransforms,
   smooth_length: sharedSmoothLength,
   snr_parts: sharedSnrParts,
+  truncated_inverse: sharedTruncatedInverse,
   valid_runs: sharedValidRuns,
   whitening_filter: sharedWhiteningFilter,
 };
