@@ -35,7 +35,7 @@ else {
     const text = readFileSync(join(work, 'demo.fringe.json'), 'utf8');
     const made = await engine.exportPython({ text, folder: work, dataFolder: '.' }, quiet);
     // What is still without an equivalent (see the registry test), and what needs it.
-    const without = ['lines'];
+    const without: string[] = [];
     expect(made.leftOut.filter((s) => !without.includes(s.do))).toEqual([]);
     expect(made.script).toContain('dependencies = ["numpy>=1.24", "scipy>=1.10", "h5py"]');
     writeFileSync(join(work, 'look.py'), made.script!);

@@ -174,7 +174,7 @@ export default defineStep({
     const law = binLaw(average, v * (1 + (Math.PI / 2) * (neighbours / (2 * half))));
     const bins = searched[1] - searched[0];
     const threshold = law.above(Math.min(0.5, params['false-alarms'] / bins));
-    const reach = Math.max(2, Math.ceil(2 * figures.enbw));
+    const reach = Math.max(2, Math.ceil(2 * figures.enbw - 1e-9));
     const found = searchLines(density, usable, searched, half, binLaw(average, v).median, threshold, reach);
 
     const parts = await partSpectra(
