@@ -21,8 +21,7 @@ describe('steps = files = docs = tests', () => {
   });
 
   test('every step has an equivalent in Python, or a reason why not', () => {
-    const without: Readonly<Record<string, string>> = {
-    };
+    const without: Readonly<Record<string, string>> = {};
     expect(ids.filter((id) => !Object.hasOwn(stepSources, id) && !Object.hasOwn(without, id))).toEqual([]);
     expect(Object.keys(stepSources).filter((id) => !ids.includes(id))).toEqual([]);
   });

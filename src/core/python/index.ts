@@ -8,6 +8,7 @@ import stepExpectedSnr from './expected-snr.py';
 import stepGate from './gate.py';
 import stepGaussianity from './gaussianity.py';
 import stepHighPass from './high-pass.py';
+import stepLines from './lines.py';
 import stepMatchedFilter from './matched-filter.py';
 import stepNoiseSpectrum from './noise-spectrum.py';
 import stepNotch from './notch.py';
@@ -24,6 +25,8 @@ import sharedDetrendedBins from './shared/detrended_bins.py';
 import sharedFilterValidRuns from './shared/filter_valid_runs.py';
 import sharedGroupRanges from './shared/group_ranges.py';
 import sharedHalfPowerHz from './shared/half_power_hz.py';
+import sharedLinePeaks from './shared/line_peaks.py';
+import sharedLineShape from './shared/line_shape.py';
 import sharedMakeWindow from './shared/make_window.py';
 import sharedMeanVariance from './shared/mean_variance.py';
 import sharedMedianBias from './shared/median_bias.py';
@@ -61,6 +64,7 @@ export const stepSources: Readonly<Record<string, string>> = {
   gate: stepGate,
   gaussianity: stepGaussianity,
   'high-pass': stepHighPass,
+  lines: stepLines,
   'matched-filter': stepMatchedFilter,
   'noise-spectrum': stepNoiseSpectrum,
   notch: stepNotch,
@@ -81,6 +85,8 @@ export const shared: Readonly<Record<string, string>> = {
   filter_valid_runs: sharedFilterValidRuns,
   group_ranges: sharedGroupRanges,
   half_power_hz: sharedHalfPowerHz,
+  line_peaks: sharedLinePeaks,
+  line_shape: sharedLineShape,
   make_window: sharedMakeWindow,
   mean_variance: sharedMeanVariance,
   median_bias: sharedMedianBias,
