@@ -1,4 +1,5 @@
 import type { ParamSpecs } from '../steps/define';
+import { OWN_SEGMENT_PARAM } from '../noise/segment-params';
 
 export const WHITEN_PARAMS = {
   low: {
@@ -28,12 +29,7 @@ export const WHITEN_PARAMS = {
     help: 'Seconds the whitening filter may reach to either side, which is also what is dropped at each end of a valid span. Its frequency resolution is 1.36 divided by this: raise it when narrow lines stay in, lower it when the data are short.',
   },
   segment: {
-    kind: 'number',
-    label: 'Segment of the own spectrum',
-    unit: 's',
-    default: 4,
-    min: 0,
-    exclusiveMin: true,
-    help: 'Only without a spectrum in "of": length of the half-overlapping Hann segments whose median is taken as noise of these data. With n segments the variance comes out too large by about 0.75/n.',
+    ...OWN_SEGMENT_PARAM,
+    help: `${OWN_SEGMENT_PARAM.help} With n segments the variance comes out too large by about 0.75/n.`,
   },
 } as const satisfies ParamSpecs;

@@ -1,4 +1,4 @@
-import { gammaBelow } from './chi-square';
+import { incompleteGamma } from '../kernels/special-incomplete-gamma';
 
 export interface FamilyMember {
   readonly line: number;
@@ -81,7 +81,7 @@ function family(
   for (let n = 2; n <= matched.length; n++) {
     const highest = matched[n - 1].harmonic;
     const expected = chances.reduce((s, c) => s + (c.harmonic <= highest ? c.chance : 0), 0);
-    const p = tried * (matched.length - 1) * gammaBelow(n, expected);
+    const p = tried * (matched.length - 1) * incompleteGamma(n, expected).lower;
     if (p <= chance) [chance, count] = [p, n];
   }
   if (count === 0) return undefined;

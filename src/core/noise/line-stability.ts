@@ -1,5 +1,5 @@
 import type { NoiseLine } from '../data/kinds';
-import { gammaBelow } from './chi-square';
+import { incompleteGamma } from '../kernels/special-incomplete-gamma';
 import type { LineShape } from './line-shape';
 
 /** Probability that any one steady line is called drifting. */
@@ -52,5 +52,6 @@ function excess(values: readonly number[], errors: readonly number[]): number {
     sum += v / errors[i] ** 2;
   });
   const chi2 = values.reduce((c, v, i) => c + ((v - sum / w) / errors[i]) ** 2, 0);
-  return 1 - gammaBelow((values.length - 1) / 2, chi2 / 2);
+  // A part in which the line has no height to speak of says nothing about it.
+  return Number.isFinite(chi2) ? incompleteGamma((values.length - 1) / 2, chi2 / 2).upper : 1;
 }

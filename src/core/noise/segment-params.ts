@@ -28,3 +28,14 @@ export const WINDOW_PARAM = {
   default: 'hann',
   help: 'Taper of each segment. Hann suits most noise; where the density falls by more than about ten decades, or with segments of a second or less over a steep low-frequency wall, take nuttall or blackman-harris. Boxcar and tukey leak.',
 } as const;
+
+/** For steps that take the noise from the data when no spectrum is given. */
+export const OWN_SEGMENT_PARAM = {
+  kind: 'number',
+  label: 'Segment of the own spectrum',
+  unit: 's',
+  default: 4,
+  min: 0,
+  exclusiveMin: true,
+  help: 'Only without a spectrum in "of": length of the half-overlapping Hann segments whose median is taken as noise of these data.',
+} as const satisfies NumberParam;

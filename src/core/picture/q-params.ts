@@ -1,4 +1,5 @@
 import type { ParamSpecs } from '../steps/define';
+import { OWN_SEGMENT_PARAM } from '../noise/segment-params';
 
 /** Where a map looks; shared by the steps that draw one. */
 export const MAP_SPAN_PARAMS = {
@@ -89,15 +90,7 @@ export const Q_PARAMS = {
     exclusiveMin: true,
     help: 'Seconds the whitening filter may reach to either side, which is also what is lost at each end of a valid span.',
   },
-  segment: {
-    kind: 'number',
-    label: 'Segment of the own spectrum',
-    unit: 's',
-    default: 4,
-    min: 0,
-    exclusiveMin: true,
-    help: 'Only without a spectrum in "of": length of the half-overlapping Hann segments whose median is taken as noise of these data.',
-  },
+  segment: OWN_SEGMENT_PARAM,
   tiles: {
     kind: 'number',
     label: 'Listed tiles',

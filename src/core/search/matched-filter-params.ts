@@ -1,4 +1,5 @@
 import type { ParamSpecs } from '../steps/define';
+import { OWN_SEGMENT_PARAM } from '../noise/segment-params';
 
 export const MATCHED_FILTER_PARAMS = {
   low: {
@@ -28,15 +29,7 @@ export const MATCHED_FILTER_PARAMS = {
     exclusiveMin: true,
     help: 'Seconds the inverse spectrum may reach to either side in time; its frequency resolution is 2 divided by this. Raise it when narrow lines disturb the ratio, lower it when the data are short.',
   },
-  segment: {
-    kind: 'number',
-    label: 'Segment of the own spectrum',
-    unit: 's',
-    default: 4,
-    min: 0,
-    exclusiveMin: true,
-    help: 'Only without a spectrum in "of": length of the half-overlapping Hann segments whose median is taken as noise of these data.',
-  },
+  segment: OWN_SEGMENT_PARAM,
   fade: {
     kind: 'number',
     label: 'Fade',
