@@ -1,5 +1,6 @@
 import type { Warning } from '../../core/data/quantity';
 import type { Card, InputProvenance, RunResult } from '../../core/protocol/engine';
+import { vettingText } from './vetting-text';
 import { columns, number, quantityValue, tableText, wrap } from './format';
 
 /** Said wherever a result is printed, so that no number is taken for more than it is. */
@@ -12,6 +13,7 @@ export function resultText(result: RunResult, width: number): string {
   return [
     ...result.inputs.map((i) => inputText(i)),
     ...result.cards.map((c) => cardText(c, w)),
+    vettingText(result),
     '\n',
     wrap(CAUTION, w),
   ].join('');
